@@ -1,0 +1,19 @@
+#include "cli/loading.h"
+
+namespace gaskettle {
+
+std::unique_ptr<Loaded> load_plant(const std::string& file, const std::vector<std::string>& set) {
+  auto loaded = std::make_unique<Loaded>();
+  loaded->source = load_model(file, set, loaded->problems);
+  if (!loaded->source.root.is_map()) {
+    if (loaded->problems.empty()) loaded->problems.add({}, file + ": there is no model in this file");
+    return loaded;
+  }
+  loaded->context = std::make_unique<ReadContext>(loaded->problems);
+  Model model = read_model(loaded->source.root, *loaded->context);
+  auto plant = std::make_unique<Plant>(std::move(model), *loaded->context);
+  if (loaded->problems.empty()) loaded->plant = std::move(plant);
+  return loaded;
+}
+
+}  // namespace gaskettle

@@ -1,0 +1,11 @@
+# Writes a source file with the text of every model in models/, so that `new` works from anywhere.
+file(GLOB models CONFIGURE_DEPENDS ${CMAKE_SOURCE_DIR}/models/*.yaml)
+set_property(DIRECTORY APPEND PROPERTY CMAKE_CONFIGURE_DEPENDS ${models})
+set(text "#include \"cli/shipped_models.h\"\n\nnamespace gaskettle {\nconst std::vector<ShippedModel>& shipped_models() {\n  static const std::vector<ShippedModel> list = {\n")
+foreach(model ${models})
+  get_filename_component(name ${model} NAME_WE)
+  file(READ ${model} content)
+  string(APPEND text "      {\"${name}\", R\"MODEL(${content})MODEL\"},\n")
+endforeach()
+string(APPEND text "  };\n  return list;\n}\n}  // namespace gaskettle\n")
+file(CONFIGURE OUTPUT ${CMAKE_CURRENT_BINARY_DIR}/shipped_models.cpp CONTENT "${text}" @ONLY)
