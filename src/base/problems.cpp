@@ -1,6 +1,9 @@
 #include "base/problems.h"
 
 #include <algorithm>
+#include <map>
+#include <set>
+#include <string_view>
 #include <tuple>
 #include <utility>
 
@@ -13,26 +16,41 @@ std::string Place::text() const {
   return line > 0 ? fmt::format("{}:{}:{}", name, line, column) : name;
 }
 
-void Problems::add(Place place, std::string message) { list_.push_back({std::move(place), std::move(message)}); }
+namespace {
+/// What users wrote and a message repeats may hold line breaks or be very long: one problem stays one line.
+std::string one_line(std::string message) {
+  constexpr std::size_t most = 1500;
+  if (message.size() > most) {
+    std::size_t end = most;
+    while (end > 0 && (static_cast<unsigned char>(message[end]) & 0xC0U) == 0x80U) --end;  // not inside a character
+    message = message.substr(0, end) + "...";
+  }
+  for (char& c : message)
+    if (static_cast<unsigned char>(c) < 0x20) c = ' ';
+  return message;
+}
+}  // namespace
+
+void Problems::add(Place place, std::string message) {
+  list_.push_back({std::move(place), one_line(std::move(message))});
+}
 
 std::vector<Problem> Problems::sorted() const {
-  std::vector<Problem> list;
-  for (const Problem& p : list_) {
-    const auto same = [&p](const Problem& q) {
-      return p.message == q.message && p.place.text() == q.place.text();
-    };
-    if (std::none_of(list.begin(), list.end(), same)) list.push_back(p);
-  }
   // Files in the order in which they were first reported.
-  std::vector<std::string> files;
-  for (const Problem& p : list) files.push_back(p.place.file ? *p.place.file : std::string());
+  std::map<std::string, std::size_t> files;
   const auto rank = [&files](const Place& place) {
-    return std::find(files.begin(), files.end(), place.file ? *place.file : std::string()) - files.begin();
+    return files.emplace(place.file ? *place.file : std::string(), files.size()).first->second;
   };
-  std::stable_sort(list.begin(), list.end(), [&rank](const Problem& a, const Problem& b) {
-    return std::tuple(rank(a.place), a.place.line, a.place.column) <
-           std::tuple(rank(b.place), b.place.line, b.place.column);
-  });
+  using Key = std::tuple<std::size_t, int, int>;
+  std::set<std::pair<Key, std::string_view>> seen;
+  std::vector<std::pair<Key, const Problem*>> order;
+  for (const Problem& p : list_) {
+    const Key key(rank(p.place), p.place.line, p.place.column);
+    if (seen.emplace(key, p.message).second) order.emplace_back(key, &p);
+  }
+  std::stable_sort(order.begin(), order.end(), [](const auto& a, const auto& b) { return a.first < b.first; });
+  std::vector<Problem> list;
+  for (const auto& [key, problem] : order) list.push_back(*problem);
   return list;
 }
 

@@ -11,8 +11,13 @@ std::unique_ptr<Loaded> load_plant(const std::string& file, const std::vector<st
   }
   loaded->context = std::make_unique<ReadContext>(loaded->problems);
   Model model = read_model(loaded->source.root, *loaded->context);
-  auto plant = std::make_unique<Plant>(std::move(model), *loaded->context);
-  if (loaded->problems.empty()) loaded->plant = std::move(plant);
+  try {
+    auto plant = std::make_unique<Plant>(std::move(model), *loaded->context);
+    if (loaded->problems.empty()) loaded->plant = std::move(plant);
+  } catch (const std::exception& e) {
+    // After a reported problem this is only its echo.
+    if (loaded->problems.empty()) loaded->problems.add(loaded->source.root.place, e.what());
+  }
   return loaded;
 }
 

@@ -72,6 +72,16 @@ Node* step(Node& from, const std::vector<std::string>& keys, std::size_t at, std
   return next;
 }
 
+// A section that is one map, not a map of names, may be left out of a model: setting a key of it writes it.
+void open_single_section(Node& root, const std::vector<std::string>& keys, const Place& place) {
+  if (!root.is_map() || keys.size() < 2 || root.find(keys.front()) != nullptr) return;
+  if (keys.front() != "surroundings" && keys.front() != "run") return;
+  Node section;
+  section.kind = Node::Kind::map;
+  section.place = place;
+  root.entries.push_back({keys.front(), place, section});
+}
+
 std::string why_not_a_path(const std::vector<std::string>& keys) {
   if (keys.front() == version_key && keys.size() == 1) return "the version of the format is not for setting";
   for (const std::string& key : keys)
@@ -142,6 +152,7 @@ void apply_override(Node& root, const std::string& path, const Node& value, Plac
   const std::vector<std::string> keys = split(path);
   std::string wrong = why_not_a_path(keys);
   Node* at = wrong.empty() ? &root : nullptr;
+  if (at) open_single_section(root, keys, place);
   for (std::size_t i = 0; at && i + 1 < keys.size(); ++i) at = step(*at, keys, i, wrong);
   if (at) {
     const std::size_t last = keys.size() - 1;

@@ -60,8 +60,10 @@ void TreeBuilder::OnNull(const YAML::Mark& mark, YAML::anchor_t anchor) {
   if (!written && !open_.empty()) node.place = open_.back().key ? open_.back().key->place : open_.back().node.place;
   // Text on a line of its own inside a map comes as a key whose value stands at the key itself.
   const Place at = place(mark);
-  if (!written && !open_.empty() && open_.back().key && at.line == node.place.line && at.column == node.place.column)
-    problems_.add(at, fmt::format("a ':' is missing after '{}'", open_.back().key->text));
+  if (!written && !open_.empty() && open_.back().key && at.line == node.place.line && at.column == node.place.column) {
+    colons_missing_.emplace_back(at, fmt::format("a ':' is missing after '{}'", open_.back().key->text));
+    open_.back().key->usable = false;  // or its missing value would be reported as well
+  }
   charge(1, 0, node.place);
   put(std::move(node), anchor);
 }

@@ -7,6 +7,7 @@
 #include <optional>
 #include <string>
 #include <unordered_map>
+#include <utility>
 #include <vector>
 
 #include "base/problems.h"
@@ -27,6 +28,11 @@ public:
 
   /// The tree; Kind::missing where the text held no document.
   Node take_root() { return std::move(root_); }
+  /// Passes on the keys without ':' met so far; not called where a bracket is not closed and anything passes for one.
+  void report_missing_colons() {
+    for (auto& [where, message] : colons_missing_) problems_.add(where, message);
+    colons_missing_.clear();
+  }
   /// The innermost map or list not closed yet, or nullptr.
   const Node* open_node() const { return open_.empty() ? nullptr : &open_.back().node; }
 
@@ -74,6 +80,7 @@ private:
   Node root_;
   bool started_ = false;
   std::vector<Frame> open_;
+  std::vector<std::pair<Place, std::string>> colons_missing_;
   std::unordered_map<YAML::anchor_t, Node> anchored_;
   std::size_t nodes_ = 0, bytes_ = 0;
 };

@@ -54,10 +54,12 @@ std::string plain_words(const std::string& library_words) {
   return fmt::format("this is not valid YAML: {}", library_words);
 }
 
-void report(const YAML::Exception& error, const YamlText& text, const TreeBuilder& builder, Problems& problems) {
+void report(const YAML::Exception& error, const YamlText& text, TreeBuilder& builder, Problems& problems) {
   std::string message = plain_words(error.msg);
   const Node* open = builder.open_node();
   const bool unclosed = error.msg == YAML::ErrorMsg::END_OF_MAP_FLOW || error.msg == YAML::ErrorMsg::END_OF_SEQ_FLOW;
+  // In a bracket that is never closed the library takes anything for a key.
+  if (!unclosed) builder.report_missing_colons();
   if (unclosed && open)
     message += fmt::format("; it opens in line {}, column {}", open->place.line, open->place.column);
   const Place place = error.mark.is_null() ? text.start() : text.place(error.mark.line, error.mark.column);
@@ -71,8 +73,10 @@ Node parse(const YamlText& text, Problems& problems) {
     YAML::Parser parser(stream);
     while (parser.HandleNextDocument(builder)) {
     }
+    builder.report_missing_colons();
     return builder.take_root();
   } catch (const YamlRefusal& refusal) {
+    builder.report_missing_colons();
     problems.add(refusal.place, refusal.message);
   } catch (const YAML::Exception& error) {
     report(error, text, builder, problems);

@@ -71,6 +71,7 @@ std::optional<BadCharacter> find_bad_character(std::string_view text) {
 YamlText::YamlText(const std::string& text, std::string file_name)
     : bytes_(unify(text)), file_(std::make_shared<const std::string>(std::move(file_name))) {
   line_starts_.push_back(0);
+  completed_ = !text.empty() && text.back() != '\n' && text.back() != '\r';
   bool ascii = true;
   for (std::size_t i = 0; i < bytes_.size(); ++i) {
     if (bytes_[i] == '\n') line_starts_.push_back(i + 1);
@@ -94,6 +95,9 @@ std::string_view YamlText::from(int line, int byte) const {
 
 Place YamlText::place(int line, int byte) const {
   const auto row = std::min(static_cast<std::size_t>(std::max(line, 0)), line_starts_.size() - 1);
+  // The line break that `unify` added begins no line of the writer's.
+  if (completed_ && row > 0 && line_starts_[row] == bytes_.size())
+    return place(static_cast<int>(row) - 1, static_cast<int>(bytes_.size() - 1 - line_starts_[row - 1]));
   const std::size_t at = offset(line, byte);
   std::size_t column = at - line_starts_[row];
   if (!continuations_.empty()) column -= continuations_[at] - continuations_[line_starts_[row]];

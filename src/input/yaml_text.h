@@ -46,6 +46,7 @@ private:
   std::string bytes_;
   std::shared_ptr<const std::string> file_;
   std::vector<std::size_t> line_starts_;
+  bool completed_ = false;  ///< the last line had no line break of its own
   /// How many bytes before each offset continue a character; empty for an ASCII text.
   std::vector<std::uint32_t> continuations_;
 };

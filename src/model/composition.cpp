@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <map>
 
 #include <fmt/format.h>
 
@@ -39,8 +40,15 @@ Composition read_composition(Section& section, const std::string& key, const std
   Composition composition;
   double sum = 0.0;
   bool good = true;
+  std::map<std::string, std::string> seen;  // a gas's own name, to the one used here
   for (const Node::Entry& e : node->entries) {
     good = known_gas(context, e.key, e.key_place) && good;
+    const auto gas = find_gas(e.key);
+    const auto [first, fresh] = seen.emplace(gas ? gas->name : e.key, e.key);
+    if (!fresh) {
+      context.problems.add(e.key_place, fmt::format("'{}' is the same gas as '{}'; name it once", e.key, first->second));
+      good = false;
+    }
     const auto x = read_number(context, e.value, section.path() + "." + key + "." + e.key);
     if (x && (*x < 0.0 || *x > 1.0)) {
       context.problems.add(e.value.place, fmt::format("the mole fraction of {} is {}; it must lie between 0 and 1", e.key, e.value.text));

@@ -16,6 +16,7 @@ void Endpoint::read(Section& s, const std::string& key, const std::string& meani
   if (node->is_scalar()) {
     if (node->text == "atmosphere") return;
     kind_ = Kind::space;
+    or_atmosphere_ = true;
     reference_ = {node->text, node->place};
     return;
   }
@@ -38,17 +39,18 @@ Endpoint Endpoint::at_atmosphere() {
   return e;
 }
 
-Endpoint Endpoint::at_space(Reference reference) {
+Endpoint Endpoint::at_space(Reference reference, bool or_atmosphere) {
   Endpoint e;
   e.kind_ = Kind::space;
   e.given_ = true;
+  e.or_atmosphere_ = or_atmosphere;
   e.reference_ = std::move(reference);
   return e;
 }
 
 void Endpoint::declare(Layout& layout) {
   if (kind_ == Kind::space) {
-    if (const SpaceInfo* space = layout.space(reference_)) space_ = space->index;
+    if (const SpaceInfo* space = layout.space(reference_, or_atmosphere_)) space_ = space->index;
     else space_ = 0;
     return;
   }

@@ -11,7 +11,7 @@ public:
   void read(Section& s, const std::string& key, const std::string& meaning);
   /// Makes the end at the atmosphere.
   static Endpoint at_atmosphere();
-  static Endpoint at_space(Reference reference);
+  static Endpoint at_space(Reference reference, bool or_atmosphere = false);
   void declare(Layout& layout);
   void connect(Layout& layout, const std::string& part, const std::string& which);
 
@@ -45,7 +45,7 @@ private:
     return kind_ == Kind::supply ? w.input[temperature_input_] : w.ambient_temperature;
   }
   Kind kind_ = Kind::atmosphere;
-  bool given_ = false;
+  bool given_ = false, or_atmosphere_ = false;
   Reference reference_;
   Composition composition_;
   SignalSpec pressure_spec_, temperature_spec_;

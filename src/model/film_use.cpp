@@ -15,6 +15,7 @@ void FilmUse::read(Section& s, bool inside) {
   const std::string type = fmt::format("film coefficient, or one of {}", fmt::join(names, ", "));
   const Node* node = s.raw("film", type, "between the gas and the face", true);
   if (node == nullptr) return;
+  place_ = node->place;
   if (node->is_scalar()) {
     name_ = node->text;
     if (name_ == "none") return;
@@ -46,7 +47,8 @@ void FilmUse::read(Section& s, bool inside) {
   }
 }
 
-void FilmUse::connect(Layout& layout, const SpaceInfo& space, double area, double wall_thickness, const Place& place) {
+void FilmUse::connect(Layout& layout, const SpaceInfo& space, double area, double wall_thickness, const Place& wall_place) {
+  const Place& place = place_.file ? place_ : wall_place;
   if (kind_ == Kind::given || kind_ == Kind::none) return;
   const bool transport = inside_ ? layout.mixture.has_transport() : layout.outside_air.has_transport();
   if (!transport)
@@ -83,7 +85,8 @@ void FilmUse::connect(Layout& layout, const SpaceInfo& space, double area, doubl
       impeller_diameter_ = impeller.diameter;
       speed_input_ = impeller.speed_input;
     }
-  if (speed_input_ < 0)
+  // A stirrer with a mistake may be the one.
+  if (speed_input_ < 0 && !layout.any_unsound("stirrer"))
     layout.error(place, fmt::format("the film 'stirred' needs a stirrer with 'diameter' and 'speed' in '{}'; use "
                                     "'enclosed', or give the film a value", space.name));
 }

@@ -31,7 +31,7 @@ public:
   /// Reads the `film` key of a face; `inside`: which correlations are allowed.
   void read(Section& s, bool inside);
   /// Takes the lengths from the space's shape (inside) or the wall around it (outside).
-  void connect(Layout& layout, const SpaceInfo& space, double area, double wall_thickness, const Place& place);
+  void connect(Layout& layout, const SpaceInfo& space, double area, double wall_thickness, const Place& wall_place);
   bool is_none() const { return kind_ == Kind::none; }
   const std::string& name() const { return name_; }
   /// A typical coefficient, W/m2/K, for choosing the conduction nodes.
@@ -72,6 +72,7 @@ private:
   enum class Kind { given, none, still_air, wind, enclosed, stirred };
   Kind kind_ = Kind::none;
   std::string name_;
+  Place place_;
   bool inside_ = true;
   double given_ = 0.0;
   std::vector<FilmSurface<double>> faces_;

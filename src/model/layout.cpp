@@ -1,6 +1,8 @@
 #include "model/layout.h"
 
 #include <algorithm>
+#include <array>
+#include <string_view>
 
 #include <fmt/format.h>
 #include <fmt/ranges.h>
@@ -55,38 +57,69 @@ int Layout::add_channel(const std::string& name, const UnitKind& kind, const std
 }
 
 namespace {
-std::string suggestion(const std::string& wrong, const std::vector<std::string>& known) {
+std::string suggestion(const std::string& wrong, const std::vector<std::string>& known, std::size_t problems) {
+  // Only the first hundred are shown: a large, wholly wrong model is not searched for each of the rest.
+  if (problems > 500) return "";
   const std::string near = nearest_name(wrong, known);
   if (!near.empty()) return fmt::format("; did you mean '{}'?", near);
-  return known.empty() ? "; there is none" : fmt::format("; there are: {}", fmt::join(known, ", "));
+  if (known.empty()) return "; there is none";
+  constexpr std::size_t most = 20;
+  if (known.size() <= most) return fmt::format("; there are: {}", fmt::join(known, ", "));
+  return fmt::format("; there are: {} and {} more", fmt::join(known.begin(), known.begin() + most, ", "), known.size() - most);
 }
+
+/// Names of channels and of inputs, after the name of their part.
+constexpr std::array<std::string_view, 24> quantities = {
+    "temperature", "outer_temperature", "core_temperature", "pressure", "volume", "mass", "energy", "specific_entropy",
+    "density", "mole_fraction", "position", "velocity", "loss", "profile", "power", "torque", "speed", "flow", "opening",
+    "released", "reading", "output", "setpoint", "force"};
 }  // namespace
 
-SpaceInfo* Layout::space(const Reference& reference) {
+bool Layout::any_unsound(const std::string& kind) const {
+  for (std::size_t i = 0; i < part_names.size(); ++i)
+    if (part_kinds[i] == kind && !sound(part_names[i])) return true;
+  return false;
+}
+
+bool Layout::excuse(const std::string& reference) {
+  const std::size_t dot = reference.find('.');
+  if (sound(reference.substr(0, dot))) return false;
+  if (dot != std::string::npos) {
+    const std::string quantity = reference.substr(dot + 1, reference.find('.', dot + 1) - dot - 1);
+    if (std::find(quantities.begin(), quantities.end(), quantity) == quantities.end()) return false;
+  }
+  ++excused_;
+  return true;
+}
+
+SpaceInfo* Layout::space(const Reference& reference, bool or_atmosphere) {
   if (!reference.given()) return nullptr;
   std::vector<std::string> names;
   for (SpaceInfo& s : spaces) {
     if (s.name == reference.name) return &s;
     names.push_back(s.name);
   }
-  error(reference.place, fmt::format("there is no gas space '{}'{}", reference.name, suggestion(reference.name, names)));
+  if (excuse(reference.name)) return nullptr;
+  if (or_atmosphere) names.emplace_back("atmosphere");
+  error(reference.place, fmt::format("there is no gas space '{}'{}", reference.name, suggestion(reference.name, names, problems_->count())));
   return nullptr;
 }
 
 int Layout::channel(const Reference& reference) {
   if (!reference.given()) return -1;
-  std::vector<std::string> names;
+  const std::string reading = reference.name + ".reading";
   for (std::size_t i = 0; i < channels.size(); ++i) {
-    if (channels[i].name == reference.name) return static_cast<int>(i);
     // A sensor's name alone stands for its reading.
-    if (channels[i].name == reference.name + ".reading") return static_cast<int>(i);
-    names.push_back(channels[i].name);
+    if (channels[i].name == reference.name || channels[i].name == reading) return static_cast<int>(i);
   }
+  if (excuse(reference.name)) return -1;
+  std::vector<std::string> names;
+  for (const ChannelDoc& c : channels) names.push_back(c.name);
   const std::string part = reference.name.substr(0, reference.name.find('.'));
   std::vector<std::string> own;
   for (const std::string& n : names)
     if (n.rfind(part + ".", 0) == 0) own.push_back(n);
-  error(reference.place, fmt::format("there is no channel '{}'{}", reference.name, suggestion(reference.name, own.empty() ? names : own)));
+  error(reference.place, fmt::format("there is no channel '{}'{}", reference.name, suggestion(reference.name, own.empty() ? names : own, problems_->count())));
   return -1;
 }
 
@@ -97,7 +130,8 @@ int Layout::input(const Reference& reference) {
     if (inputs[i].path == reference.name) return static_cast<int>(i);
     names.push_back(inputs[i].path);
   }
-  error(reference.place, fmt::format("a controller cannot drive '{}'{}", reference.name, suggestion(reference.name, names)));
+  if (excuse(reference.name)) return -1;
+  error(reference.place, fmt::format("a controller cannot drive '{}'{}", reference.name, suggestion(reference.name, names, problems_->count())));
   return -1;
 }
 
@@ -132,7 +166,7 @@ void Layout::close_gases() {
     }
   }
   if (list.size() > static_cast<std::size_t>(GasMixture::max_species)) {
-    error({}, fmt::format("the model uses {} gases; at most {} can be in one plant", list.size(), GasMixture::max_species));
+    error(gas_names_[GasMixture::max_species].second, fmt::format("the model uses {} gases; at most {} can be in one plant", list.size(), GasMixture::max_species));
     list.resize(GasMixture::max_species);
   }
   if (list.empty()) list.push_back(*find_gas("nitrogen"));

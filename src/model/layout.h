@@ -7,6 +7,7 @@
 #pragma once
 #include <map>
 #include <optional>
+#include <set>
 #include <string>
 #include <vector>
 
@@ -50,6 +51,7 @@ struct SpaceInfo {
   double volume = 0.0;        ///< m3 at the start, all of them
   double temperature = 0.0;   ///< K at the start
   std::optional<double> pressure;  ///< Pa absolute at the start, once known
+  Place pressure_place;            ///< where it is stated
   std::optional<double> given_mass;  ///< kg of all of them
   Composition composition;
   std::vector<bool> carries;      ///< which species can ever be in here
@@ -57,6 +59,7 @@ struct SpaceInfo {
   std::vector<double> mass;       ///< kg at the start, per species
   double energy = 0.0;            ///< J at the start (zero: ideal gas h = 0 at 298.15 K)
   double stated_wall_area = 0.0;  ///< m2 that walls with an area of their own take
+  int whole_walls = 0;            ///< walls that take what is left of the shape; more than one is a mistake
   bool closed_by_piston = false;
 };
 
@@ -149,11 +152,18 @@ public:
                   const std::string& unit = "");
 
   // --- found by name; problems are reported, and -1 or nullptr returned ---
-  SpaceInfo* space(const Reference& reference);
+  /// `or_atmosphere`: the atmosphere would do as well, and is suggested too.
+  SpaceInfo* space(const Reference& reference, bool or_atmosphere = false);
   int channel(const Reference& reference);
   int pressure_channel(int space) const { return pressure_channels[static_cast<std::size_t>(space)]; }
   int input(const Reference& reference);
   std::optional<std::string> kind_of_part(const std::string& name) const;
+  bool sound(const std::string& part) const { return unsound.count(part) == 0; }
+  bool any_unsound(const std::string& kind) const;
+  /// Whether `reference` names what a part would have, had it been read without mistake; counts it as trouble.
+  bool excuse(const std::string& reference);
+  /// Grows with every problem and every excuse.
+  std::size_t troubles() const { return problems_->count() + excused_; }
 
   // --- gases ---
   /// Registers the gases of a composition as part of the plant.
@@ -189,6 +199,8 @@ public:
   std::vector<WallGrid> wall_grids;
   std::vector<ImpellerInfo> impellers;
   std::vector<std::string> part_names, part_kinds;  ///< for messages
+  std::set<std::string> unsound;                    ///< parts with a mistake
+  bool loose_piston = false;  ///< a balanced piston with a mistake may be what a pressure would follow from
   struct LedgerEntry {
     LedgerTerm term;
     std::string part;
@@ -205,6 +217,7 @@ public:
 
 private:
   Problems* problems_;
+  std::size_t excused_ = 0;
 
 public:
   double atmosphere_pressure;           ///< Pa

@@ -76,6 +76,10 @@ std::optional<Material> read_material(Section& s, const std::string& key, const 
     Section map(context, node, s.path() + "." + key);
     return read_material_map(map, "stated");
   }
+  if (!node->is_scalar()) {
+    s.error(key, fmt::format("'{}.{}' should be the name of a material or a map {{density, specific_heat, conductivity}}", s.path(), key));
+    return std::nullopt;
+  }
   std::vector<std::string> names;
   for (const Material& m : context.own_materials) {
     if (m.name == node->text) return m;

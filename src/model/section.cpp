@@ -117,7 +117,7 @@ const Node* Section::take(const std::string& key) {
   known_.insert(key);
   const Node* n = node_ == nullptr ? nullptr : node_->find(key);
   if (n != nullptr && n->kind == Node::Kind::null) {
-    context_->problems.add(n->place, fmt::format("'{}' has no value", join_path(path_, key)));
+    context_->problems.add(n->place, fmt::format("'{}' has no value; give it one, or take the key out", join_path(path_, key)));
     return nullptr;
   }
   return n;
@@ -133,7 +133,7 @@ void Section::document(const std::string& key, const std::string& type, const Un
 
 void Section::missing(const std::string& key, const std::string& example) {
   if (node_ == nullptr) return;
-  context_->problems.add(place_, fmt::format("'{}' is missing in '{}'{}", key, path_.empty() ? "the model" : path_,
+  context_->problems.add(place_, fmt::format("'{}' is missing in {}{}", key, path_.empty() ? "the model" : "'" + path_ + "'",
                                              example.empty() ? "" : "; write for example '" + key + ": " + example + "'"));
 }
 
@@ -156,7 +156,8 @@ Value Section::quantity(const std::string& key, const UnitKind& kind, const std:
     if (node_ != nullptr) context_->defaults_used.push_back(join_path(path_, key) + " = " + fallback);
     return Value{q.value + (q.gauge ? context_->atmosphere : 0.0), q.unit, place_, false, q.gauge};
   }
-  return read_value(*context_, *n, join_path(path_, key), kind, range).value_or(Value{1.0, "", n->place, false, false});
+  if (const auto v = read_value(*context_, *n, join_path(path_, key), kind, range)) return *v;
+  return Value{parse_quantity(fallback, kind).value, "", n->place, false, false};
 }
 
 std::optional<Value> Section::optional_quantity(const std::string& key, const UnitKind& kind,
@@ -291,22 +292,24 @@ void Section::not_built_yet(const std::string& key, const std::string& meaning) 
   if (take(key) != nullptr) error(key, fmt::format("'{}' is not built yet", join_path(path_, key)));
 }
 
-void Section::exactly_one_of(std::initializer_list<const char*> keys) {
-  if (node_ == nullptr) return;
+bool Section::exactly_one_of(std::initializer_list<const char*> keys) {
+  if (node_ == nullptr) return true;
   int found = 0;
   for (const char* k : keys) found += node_->find(k) != nullptr ? 1 : 0;
   if (found == 0) error_here(fmt::format("'{}' needs one of {}", path_, fmt::join(keys, ", ")));
-  at_most_one_of(keys);
+  return at_most_one_of(keys) && found == 1;
 }
 
-void Section::at_most_one_of(std::initializer_list<const char*> keys) {
-  if (node_ == nullptr) return;
-  bool before = false;
+bool Section::at_most_one_of(std::initializer_list<const char*> keys) {
+  if (node_ == nullptr) return true;
+  bool before = false, good = true;
   for (const char* k : keys) {
     if (node_->find(k) == nullptr) continue;
     if (before) error(k, fmt::format("'{}' takes only one of {}", path_, fmt::join(keys, ", ")));
+    good = good && !before;
     before = true;
   }
+  return good;
 }
 
 void Section::error(const std::string& key, const std::string& message) {

@@ -64,6 +64,7 @@ struct ReadContext {
   std::vector<Material> own_materials;     ///< from the `materials` section
   std::vector<KeyDoc>* docs = nullptr;     ///< where describing collects
   std::vector<std::string> defaults_used;  ///< "walls.shell.outside.emissivity = 0.9"
+  std::set<std::string> unsound;           ///< parts with a mistake; who refers to them is not to blame
 };
 
 class Section {
@@ -120,9 +121,9 @@ public:
   /// A key of the published format that this version does not have yet: refused by name.
   void not_built_yet(const std::string& key, const std::string& meaning);
 
-  /// Exactly one of the keys must be there; the others are an error.
-  void exactly_one_of(std::initializer_list<const char*> keys);
-  void at_most_one_of(std::initializer_list<const char*> keys);
+  /// Exactly one of the keys must be there; the others are an error. True where it is so.
+  bool exactly_one_of(std::initializer_list<const char*> keys);
+  bool at_most_one_of(std::initializer_list<const char*> keys);
 
   void error(const std::string& key, const std::string& message);
   void error_here(const std::string& message);

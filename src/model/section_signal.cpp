@@ -12,10 +12,20 @@ public:
       : context_(context), kind_(kind), range_(range), path_(std::move(path)) {}
 
   SignalSpec read(const Node& node) {
+    const std::size_t before = context_.problems.count();
     spec_.given = true;
+    read_any(node);
+    spec_.sound = context_.problems.count() == before;
+    return spec_;
+  }
+  bool mixed_bases() const { return mixed_; }
+  FlowBasis basis() const { return basis_; }
+
+private:
+  void read_any(const Node& node) {
     if (!node.is_map()) {
       if (const auto v = value(node)) spec_.level = *v;
-      return spec_;
+      return;
     }
     Section map(context_, &node, path_);
     map.exactly_one_of({"schedule", "ramp", "sine", "csv"});
@@ -23,12 +33,8 @@ public:
     if (const Node* n = map.raw("schedule", "list of [time, value]", "", false)) read_schedule(map, *n);
     if (auto ramp = map.child("ramp", "")) read_ramp(*ramp);
     if (auto sine = map.child("sine", "")) read_sine(*sine);
-    return spec_;
   }
-  bool mixed_bases() const { return mixed_; }
-  FlowBasis basis() const { return basis_; }
 
-private:
   std::optional<double> value(const Node& node) {
     FlowBasis basis = FlowBasis::mass;
     const auto v = read_value(context_, node, path_, kind_, range_, &basis);

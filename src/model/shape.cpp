@@ -56,9 +56,10 @@ Shape read_shape(Section& section) {
     shape.upright = cylinder->choice("axis", {"upright", "level"}, "direction of the axis", "upright") == "upright";
   }
   if (auto sphere = section.child("sphere", "a sphere")) {
-    if (shape.kind == Shape::Kind::unknown || section.describing()) {
+    const double bore = sphere->quantity("bore", unit_kinds::length, "inner diameter", Range::positive);
+    if (shape.kind == Shape::Kind::unknown) {
       shape.kind = Shape::Kind::sphere;
-      shape.bore = sphere->quantity("bore", unit_kinds::length, "inner diameter", Range::positive);
+      shape.bore = bore;
     }
   }
   return shape;

@@ -37,55 +37,50 @@ Signal Signal::sine(double mean, double amplitude, double frequency_hz) {
   return s;
 }
 
-namespace {
-/// Start of the repetition that holds at t, and whether repeating is over.
-double repetition_start(double t, double first, double last, long repeats) {
-  const double period = last - first;
-  if (repeats == 0 || period <= 0.0 || t < first) return 0.0;
+/// The repetition that holds at t >= the first point, in the same arithmetic as `time_of`.
+double Signal::repetition(double t) const {
+  if (repeats_ == 0) return 0.0;
+  const double first = points_.front().first, period = points_.back().first - first;
+  if (period <= 0.0) return 0.0;
   double n = std::floor((t - first) / period);
-  // Rounding may leave t a hair below the boundary that it stands for.
   if (first + (n + 1.0) * period <= t) n += 1.0;
-  if (repeats > 0) n = std::min(n, static_cast<double>(repeats - 1));
-  return n * period;
+  if (first + n * period > t) n -= 1.0;
+  return repeats_ > 0 ? std::min(n, static_cast<double>(repeats_ - 1)) : n;
 }
-}  // namespace
+
+/// Time of point i in repetition n. One repetition ends exactly where the next begins, whatever the rounding.
+double Signal::time_of(std::size_t i, double n) const {
+  const double first = points_.front().first, last = points_.back().first, time = points_[i].first;
+  if (repeats_ == 0) return time;
+  return time == last ? first + (n + 1.0) * (last - first) : time + n * (last - first);
+}
 
 double Signal::next_corner(double t) const {
   constexpr double never = std::numeric_limits<double>::infinity();
   if (sine_ || points_.size() < 2) return never;
-  const double first = points_.front().first, last = points_.back().first;
-  const double shift = repetition_start(t, first, last, repeats_);
-  for (const double s : {shift, shift + (last - first)}) {
-    if (s > 0.0 && repeats_ >= 0 && s > (last - first) * static_cast<double>(std::max(repeats_ - 1, 0L)) * (1 + 1e-12)) break;
-    for (const auto& p : points_)
-      if (p.first + s > t) return p.first + s;
-    if (repeats_ == 0) break;
-  }
+  const double n = t < points_.front().first ? 0.0 : repetition(t);
+  for (std::size_t i = 0; i < points_.size(); ++i)
+    if (const double corner = time_of(i, n); corner > t) return corner;
+  // No point after t in the repetition that holds: it is the last one.
   return never;
 }
 
 void Signal::advance(double t) {
   if (sine_ || points_.empty()) return;
-  const double first = points_.front().first, last = points_.back().first;
-  const double shift = repetition_start(t, first, last, repeats_);
-  // The last point whose time is not after t, as next_corner computes that time.
-  std::size_t i = points_.size();
-  while (i > 0 && points_[i - 1].first + shift > t) --i;
   slope_ = 0.0;
   start_ = t;
-  if (i == 0) {
-    level_ = points_.front().second;
-  } else if (i == points_.size()) {
-    level_ = points_.back().second;
-  } else if (held_) {
-    level_ = points_[i - 1].second;
-  } else {
-    const auto& [t0, v0] = points_[i - 1];
-    const auto& [t1, v1] = points_[i];
-    slope_ = (v1 - v0) / (t1 - t0);
-    level_ = v0;
-    start_ = t0 + shift;
-  }
+  level_ = points_.front().second;
+  if (t < points_.front().first) return;
+  const double n = repetition(t);
+  std::size_t next = points_.size();  // the first point after t
+  while (next > 0 && time_of(next - 1, n) > t) --next;
+  if (next == 0) return;
+  level_ = points_[next - 1].second;
+  if (held_ || next == points_.size()) return;
+  const auto& [t0, v0] = points_[next - 1];
+  const auto& [t1, v1] = points_[next];
+  slope_ = (v1 - v0) / (t1 - t0);
+  start_ = time_of(next - 1, n);
 }
 
 std::pair<double, double> Signal::range() const {

@@ -45,6 +45,9 @@ public:
   bool varies() const { return sine_ || points_.size() > 1; }
 
 private:
+  double repetition(double t) const;
+  double time_of(std::size_t i, double n) const;
+
   std::vector<std::pair<double, double>> points_;
   bool held_ = false;
   long repeats_ = 0;
@@ -58,6 +61,7 @@ struct SignalSpec {
   enum class Kind { constant, schedule, ramp, sine };
   Kind kind = Kind::constant;
   bool given = false;
+  bool sound = true;   // false: its reading was reported, and its numbers mean nothing
   double level = 0.0;  // constant; mean of a sine
   std::vector<std::pair<double, double>> points;
   bool held = false;

@@ -26,7 +26,7 @@ inline constexpr std::array<const char*, ledger_term_count> ledger_meanings = {
     "enthalpy carried in by feeds",
     "friction heat that stays in gas or wall",
     "enthalpy carried out by vents and relief devices",
-    "heat lost from outer faces to what they see",
+    "heat lost from outer faces to what they see (negative: taken up)",
     "work done lifting pistons and the loads on them",
     "work done on springs",
     "work done pushing back the atmosphere",

@@ -1,5 +1,7 @@
 #include "parts/controller.h"
 
+#include <cmath>
+
 #include <fmt/format.h>
 
 namespace gaskettle {
@@ -19,6 +21,12 @@ void Controller::read(Section& s) {
     by->raw("on_off", "{dead_band}", "full on or off; dead_band is its total width, centred on the setpoint; starts on", false);
     by->raw("pi", "{gain, reset_time}", "output = gain (e + integral of e dt / reset_time)", false);
     by->not_built_yet("pid", "PID in the standard form");
+    if (s.describing()) {  // read once the units of what is held and driven are known
+      Section(*context_, path_ + ".by.on_off").raw("dead_band", "difference of what is held", "total width, centred on the setpoint", true);
+      Section pi(*context_, path_ + ".by.pi");
+      pi.raw("gain", "unit of what is driven per unit of what is held", "output per error", true);
+      pi.raw("reset_time", "time", "of the integral", true);
+    }
   }
 }
 
@@ -40,7 +48,7 @@ void Controller::connect(Layout& layout) {
   driven_ = layout.input(drives_);
   reading_ = layout.channel(holds_);
   if (driven_ < 0 || reading_ < 0) return;
-  InputInfo& driven = layout.inputs[driven_];
+  const InputInfo driven = layout.inputs[driven_];  // a copy: the list grows below
   const ChannelDoc held = layout.channels[reading_];
   if (driven.driver >= 0) layout.error(drives_.place, fmt::format("'{}' is already driven by another controller", drives_.name));
   if (driven.given) layout.error(drives_.place, fmt::format("'{}' has a value of its own in the model and is driven by controller '{}': leave one out", drives_.name, name));
@@ -51,7 +59,8 @@ void Controller::connect(Layout& layout) {
   // A cooler's power is negative: full output is the lower end.
   if (low_ < 0.0 && high_ == 0.0) std::swap(low_, high_);
   read_by(held.kind, driven.kind);
-  if (high_ < low_) sense_ = -sense_;
+  // Falling output of a cooler is more cooling: "on" is its low end. A PI output has its sign already.
+  if (on_off_ && high_ < low_) sense_ = -sense_;
   const SignalSpec at = read_signal(*context_, *at_node_, path_ + ".at", held.kind);
   setpoint_ = layout.add_input(name + ".setpoint", held.kind, at, 0.0, place);
   setpoint_spec_ = at;
@@ -102,11 +111,13 @@ void Controller::guards(const Workspace<double>& w, double* g) const {
   }
 }
 
-/// Where freezing the integral would let the output fall back in, it follows the limit.
+/// At the limit, where freezing the integral would let the output fall back in, it follows the limit.
+/// Well beyond the limit (a step of the setpoint) the integral is frozen as it is.
 void Controller::rest_on_limit(bool high, Event& e) {
   const Workspace<double>& w = e.now();
   const double end = (high ? 1.0 : -1.0) * (high_ > low_ ? 1.0 : -1.0);
-  const bool would_fall_back = end * error_rate(w, e.channel_rate(reading_)) < 0.0;
+  const double beyond = end * (unlimited(w) - (high ? high_ : low_));
+  const bool would_fall_back = beyond < 1e-6 * std::abs(high_ - low_) && end * error_rate(w, e.channel_rate(reading_)) < 0.0;
   if (would_fall_back) mode_ = high ? Mode::held_high : Mode::held_low;
   else mode_ = high ? Mode::limited_high : Mode::limited_low;
 }
@@ -121,8 +132,11 @@ void Controller::on_guard(int which, Event& e) {
   const Mode old = mode_;
   const bool high = old == Mode::limited_high || old == Mode::held_high || (old == Mode::free && which == 0);
   const double end = (high ? 1.0 : -1.0) * (high_ > low_ ? 1.0 : -1.0);
-  if (old == Mode::held_high || old == Mode::held_low)
-    e.y[integral_] = reset_time_ * ((high ? high_ : low_) / gain_ - error(*e.before));
+  if (old == Mode::held_high || old == Mode::held_low) {
+    // A hair to the side it goes on from: at the limit itself rounding would send it back at once, without end.
+    const double hair = 1e-10 * std::abs(high_ - low_) * (which == 0 ? -end : end);
+    e.y[integral_] = reset_time_ * (((high ? high_ : low_) + hair) / gain_ - error(*e.before));
+  }
   if (old == Mode::free) {
     rest_on_limit(high, e);
     e.log(name, high ? "reaches its upper limit" : "reaches its lower limit", before, high ? high_ : low_);
@@ -140,6 +154,19 @@ void Controller::on_guard(int which, Event& e) {
     return;
   }
   e.log(name, high ? "leaves its upper limit" : "leaves its lower limit", before, e.now().out[channel_]);
+}
+
+void Controller::on_inputs_changed(Event& e) {
+  if (mode_ != Mode::held_high && mode_ != Mode::held_low) return;
+  if (e.now().input[setpoint_] == e.before->input[setpoint_]) return;
+  // The setpoint has jumped: the integral stays where the limit had led it, and the output answers to the jump.
+  const bool high = mode_ == Mode::held_high;
+  const double limit = high ? high_ : low_, end = (high ? 1.0 : -1.0) * (high_ > low_ ? 1.0 : -1.0);
+  e.y[integral_] = reset_time_ * (limit / gain_ - error(*e.before));
+  mode_ = Mode::free;
+  const double output = unlimited(e.now());
+  if (end * (output - limit) > 0.0) mode_ = high ? Mode::limited_high : Mode::limited_low;
+  else e.log(name, high ? "leaves its upper limit" : "leaves its lower limit", limit, output);
 }
 
 }  // namespace gaskettle

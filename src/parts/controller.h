@@ -53,6 +53,8 @@ public:
   /// The guards of a held output need rates of change.
   bool needs_rate() const { return mode_ == Mode::held_high || mode_ == Mode::held_low; }
   void on_guard(int which, Event& e);
+  /// The setpoint may have jumped.
+  void on_inputs_changed(Event& e);
 
 private:
   template <class S> S error(const Workspace<S>& w) const { return sense_ * (w.input[setpoint_] - w.out[reading_]); }

@@ -18,6 +18,7 @@ void GasSpace::read(Section& s) {
   stated_pressure_ = s.optional_quantity("pressure", unit_kinds::pressure,
                                          "at the start; may be left out where a balanced piston closes the space", Range::positive);
   stated_mass_ = s.optional_quantity("mass", unit_kinds::mass, "of gas at the start, instead of pressure", Range::positive);
+  has_content_ = s.has("pressure") || s.has("mass");
   count_ = s.integer("count", "so many alike, walls and bodies with them", 1, 1);
 }
 
@@ -31,7 +32,11 @@ void GasSpace::declare(Layout& layout) {
   info.count = static_cast<double>(count_);
   info.volume = info.count * (stated_volume_ ? stated_volume_->si : shape_.volume());
   info.temperature = start_temperature_;
-  if (stated_pressure_) info.pressure = stated_pressure_->si;
+  if (!(info.volume > 0.0)) info.volume = info.count;  // reported already; the checks go on with 1 m3
+  if (stated_pressure_) {
+    info.pressure = stated_pressure_->si;
+    info.pressure_place = stated_pressure_->place;
+  }
   if (stated_mass_) info.given_mass = info.count * stated_mass_->si;
   info.composition = composition_;
   layout.use_gas(composition_, place);
@@ -47,7 +52,7 @@ void GasSpace::connect(Layout& layout) {
   if (info.given_mass)
     info.pressure = *info.given_mass / molar_mass * molar_gas_constant * info.temperature / info.volume;
   if (!info.pressure) {
-    layout.error(place, fmt::format("gas space '{}' needs 'pressure' or 'mass'", name));
+    if (!has_content_ && !layout.loose_piston) layout.error(place, fmt::format("gas space '{}' needs 'pressure' or 'mass'", name));
     info.pressure = layout.atmosphere_pressure;
   }
   volume_ = info.volume;
@@ -73,7 +78,8 @@ void GasSpace::connect(Layout& layout) {
   mass_ = info.mass;
   mass_state_ = info.mass_state;
   lowest_ = mixture.lowest_temperature(mass_.data());
-  highest_ = mixture.highest_temperature(mass_.data());
+  // A gas of constant cp has no upper end: a finite one keeps the guard finite.
+  highest_ = std::min(1e9, mixture.highest_temperature(mass_.data()));
 
   layout.facts.push_back({name, "gas mass", total, unit_kinds::mass});
   layout.facts.push_back({name, "p V", *info.pressure * volume_, unit_kinds::energy});
@@ -97,7 +103,7 @@ void GasSpace::connect(Layout& layout) {
 void GasSpace::on_guard(int which, Event& e) const {
   const double t = e.before->gas[index_].temperature;
   e.log(name, which == 0 ? "above the published range of the gas data" : "below the published range of the gas data", t, t);
-  e.layout->warnings.push_back(fmt::format("{}: gas at {:.2f} K leaves the published range {:.0f} to {:.0f} K of its data at {:.6g} s; cp is held outside",
+  e.layout->warnings.push_back(fmt::format("{}: gas at {:.6g} K leaves the published range {:.0f} to {:.0f} K of its data at {:.6g} s; cp is held outside",
                                            name, t, lowest_, highest_, e.time));
 }
 

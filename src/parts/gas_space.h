@@ -85,6 +85,7 @@ private:
   Value start_temperature_;
   Composition composition_;
   long count_ = 1;
+  bool has_content_ = false;  // states pressure or mass, readable or not
 
   int index_ = 0, store_ = 0, energy_state_ = 0, channel_ = 0;
   double volume_ = 0.0, energy_ = 0.0, temperature_ = 0.0, start_energy_ = 0.0, start_cv_ = 1.0;

@@ -48,6 +48,7 @@ private:
 
   Reference in_, wall_, body_;
   long after_layer_ = 0;
+  Place after_layer_place_;
   double rating_ = 0.0;
   bool has_rating_ = false;
   SignalSpec power_spec_;

@@ -23,6 +23,7 @@ void Piston::read_friction(Section& s) {
   if (const auto v = f->optional_quantity("stribeck_velocity", unit_kinds::velocity, "over which breakaway falls to kinetic", Range::positive)) friction_.stribeck_velocity = *v;
   heat_to_ = f->choice("heat_to", {"gas", "wall", "surroundings"}, "who gets the friction heat (wall, or surroundings where there is none)", "");
   if (s.describing()) return;
+  heat_to_place_ = f->place_of("heat_to");
   if (friction_.breakaway < friction_.kinetic)
     f->error("breakaway", fmt::format("'{}': breakaway must not be below kinetic friction", f->path()));
   if (friction_.stribeck_velocity > 0.0 && motion_ == Motion::balanced)
@@ -55,6 +56,7 @@ void Piston::read(Section& s) {
   position_spec_ = s.signal("position", unit_kinds::length, "of a driven piston", Range::any);
   flow_spec_ = s.signal("flow", unit_kinds::liquid_flow, "of the liquid behind a driven piston; positive pushes toward smaller x", Range::any);
   if (const Node* stops = s.raw("stops", "[low, high], two lengths", "positions it cannot pass", false)) {
+    stops_place_ = stops->place;
     if (!stops->is_list() || stops->items.size() != 2) {
       s.error("stops", fmt::format("'{}.stops' should be [low, high]", s.path()));
     } else {
@@ -65,7 +67,7 @@ void Piston::read(Section& s) {
         high_ = *high;
         has_stops_ = true;
         if (low_ >= high_) s.error("stops", fmt::format("'{}.stops' must rise", s.path()));
-        else if (at_ < low_ || at_ > high_) s.error("at", fmt::format("'{}.at' lies outside its stops", s.path()));
+        else if (at.given && (at_ < low_ || at_ > high_)) s.error("at", fmt::format("'{}.at' lies outside its stops", s.path()));
       }
     }
   }
@@ -84,18 +86,18 @@ void Piston::read(Section& s) {
 void Piston::check(Section& s) {
   const bool driven = motion_ == Motion::driven;
   driven_by_flow_ = flow_spec_.given;
-  if (driven && position_spec_.given == flow_spec_.given) s.error_here(fmt::format("'{}' is driven: it needs 'position' or 'flow', one of them", s.path()));
+  if (driven && s.has("position") == s.has("flow")) s.error_here(fmt::format("'{}' is driven: it needs 'position' or 'flow', one of them", s.path()));
   if (!driven)
     for (const char* key : {"position", "flow"})
       if (s.has(key)) s.error(key, fmt::format("'{}': '{}' goes with motion: driven", s.path(), key));
   if (motion_ != Motion::inertial && s.has("velocity")) s.error("velocity", fmt::format("'{}': 'velocity' goes with motion: inertial", s.path()));
-  if (motion_ == Motion::inertial) {
+  if (motion_ == Motion::inertial && mass_spec_.sound) {
     const double least = mass_spec_.given ? mass_spec_.make(mass_spec_.level).range().first : 0.0;
-    if (!(least > 0.0)) s.error(s.has("mass") ? "mass" : "closes", fmt::format("'{}' is inertial: its mass must always be above zero", s.path()));
+    if (!(least > 0.0)) s.error("mass", fmt::format("'{}' is inertial: its mass must always be above zero", s.path()));
   }
-  if (driven && position_spec_.given) {
+  if (driven && position_spec_.given && position_spec_.sound) {
     const Signal path = position_spec_.make(at_);
-    if (std::abs(path.at(0.0) - at_) > 1e-9 * std::max(1.0, std::abs(at_)))
+    if (s.has("at") && std::abs(path.at(0.0) - at_) > 1e-9 * std::max(1.0, std::abs(at_)))
       s.error("position", fmt::format("'{}.position' starts at {:.6g} m, but 'at' is {:.6g} m", s.path(), path.at(0.0), at_));
     const auto [low, high] = path.range();
     if (has_stops_ && (low < low_ - 1e-12 || high > high_ + 1e-12)) s.error("position", fmt::format("'{}.position' goes beyond the stops", s.path()));
@@ -111,6 +113,9 @@ double Piston::balance_pressure(const Layout& layout, double back_pressure) cons
 void Piston::declare(Layout& layout) {
   SpaceInfo* space = layout.space(closes_);
   SpaceInfo* back = layout.space(back_reference_);
+  // With a mistake in it, or in what it touches, its balance would only echo that.
+  const bool sound = layout.sound(name) && (space == nullptr || layout.sound(space->name)) && (back == nullptr || layout.sound(back->name));
+  if (motion_ == Motion::balanced && (space == nullptr || !sound)) layout.loose_piston = true;
   if (space == nullptr) return;
   space->closed_by_piston = true;
   if (back != nullptr) {
@@ -119,18 +124,19 @@ void Piston::declare(Layout& layout) {
   }
   for (const SpaceInfo* s : {static_cast<const SpaceInfo*>(space), static_cast<const SpaceInfo*>(back)})
     if (s != nullptr && s->count != 1.0) layout.error(place, fmt::format("piston '{}' closes '{}', which has a count; state the spaces one by one", name, s->name));
-  if (has_stops_) {
+  if (has_stops_ && sound) {
     const double least = space->volume + area_ * (low_ - at_);
-    if (least <= 0.0) layout.error(place, fmt::format("piston '{}': at its low stop '{}' would have no volume ({:.4g} m3)", name, space->name, least));
+    if (least <= 0.0) layout.error(stops_place_, fmt::format("piston '{}': at its low stop '{}' would have no volume ({:.4g} m3)", name, space->name, least));
     if (back != nullptr && back->volume - back_area_ * (high_ - at_) <= 0.0)
-      layout.error(place, fmt::format("piston '{}': at its high stop '{}' would have no volume", name, back->name));
+      layout.error(stops_place_, fmt::format("piston '{}': at its high stop '{}' would have no volume", name, back->name));
   }
-  if (motion_ != Motion::balanced || friction_.viscous > 0.0) return;
+  if (motion_ != Motion::balanced || friction_.viscous > 0.0 || !sound) return;
   if (back != nullptr && !back->pressure) return;
   const double behind = back != nullptr ? *back->pressure : (back_spec_.given ? back_spec_.initial(layout.atmosphere_pressure) : layout.atmosphere_pressure);
   const double right = balance_pressure(layout, behind);
   if (!(right > 0.0)) {
     layout.error(place, fmt::format("piston '{}': its balance needs a pressure of {:.6g} Pa in '{}', which is not above zero", name, right, space->name));
+    layout.loose_piston = true;
     return;
   }
   if (!space->pressure && !space->given_mass) {
@@ -144,7 +150,7 @@ void Piston::declare(Layout& layout) {
   const bool on_high = has_stops_ && at_ >= high_ * (1 - 1e-12) - 1e-15 && net > -held;
   if (on_low || on_high || (held > 0.0 && std::abs(net) <= held)) return;
   if (std::abs(*space->pressure - right) > 1e-3 * right) {
-    layout.error(space->place, fmt::format("gas space '{}': the balanced piston '{}' needs {:.6g} Pa abs ({:.6g} Pa gauge) at the start; leave 'pressure' out, or use motion: inertial",
+    layout.error(space->pressure_place, fmt::format("gas space '{}': the balanced piston '{}' needs {:.6g} Pa abs ({:.6g} Pa gauge) at the start; leave 'pressure' out, or use motion: inertial",
                                            space->name, name, right, right - layout.atmosphere_pressure));
     return;
   }
@@ -163,7 +169,7 @@ void Piston::find_receiver(Layout& layout) {
     }
   if (heat_to_ == "gas") heat_store_ = space_store_;
   else if (heat_to_ == "wall" || heat_to_.empty()) heat_store_ = wall;
-  if (heat_to_ == "wall" && wall < 0) layout.error(place, fmt::format("piston '{}': there is no wall around '{}' to take its friction heat", name, layout.spaces[space_].name));
+  if (heat_to_ == "wall" && wall < 0 && !layout.any_unsound("wall")) layout.error(heat_to_place_, fmt::format("piston '{}': there is no wall around '{}' to take its friction heat", name, layout.spaces[space_].name));
 }
 
 /// Balanced or inertial: the period of the gas spring against the time scale of the run.
@@ -272,9 +278,15 @@ void Piston::guards(const Workspace<double>& w, double* g) const {
   if (mode_ != Mode::low_stop) g[4] = -net - held;
 }
 
+/// The contact is found a rounding beyond the stop: left there, the piston would meet the stop again on leaving it.
+void Piston::lie_on(Mode stop, Event& e) {
+  mode_ = stop;
+  e.y[position_state_] = (stop == Mode::low_stop ? low_ : high_) - at_;
+}
+
 void Piston::rest_at(Mode stop, Event& e) {
   const double v = e.before->out[channel_ + 1];
-  mode_ = stop;
+  lie_on(stop, e);
   e.log(name, stop == Mode::low_stop ? "rests on low stop" : "rests on high stop", v, 0.0);
 }
 
@@ -294,7 +306,7 @@ void Piston::collide(bool low, Event& e) {
   e.book(impact_entry_, lost);
   e.generate(Mechanism::impact, lost / w.ambient_temperature);
   e.carry_entropy(-lost / w.ambient_temperature);
-  if (after == 0.0) mode_ = stop;
+  if (after == 0.0) lie_on(stop, e);
   else if (has_static_friction()) mode_ = low ? Mode::outward : Mode::inward;
   e.log(name, after == 0.0 ? (low ? "comes to rest on low stop" : "comes to rest on high stop") : (low ? "hits low stop" : "hits high stop"), before, after);
 }

@@ -122,6 +122,7 @@ private:
   void check(Section& s);
   void find_receiver(Layout& layout);
   void advise(Layout& layout, const SpaceInfo& space) const;
+  void lie_on(Mode stop, Event& e);
   void rest_at(Mode stop, Event& e);
   void collide(bool low, Event& e);
   void come_to_rest(Event& e);
@@ -137,6 +138,7 @@ private:
   SignalSpec mass_spec_, force_spec_, position_spec_, flow_spec_, back_spec_;
   bool driven_by_flow_ = false, has_stops_ = false;
   std::string length_unit_;
+  Place stops_place_, heat_to_place_;
 
   int space_ = 0, back_space_ = -1, space_store_ = 0, back_store_ = -1, heat_store_ = -1;
   int position_state_ = -1, velocity_state_ = -1, channel_ = 0, guard_offset_ = 0;

@@ -24,7 +24,7 @@ void ReliefDevice::read_valve(Section& s) {
   lift_range_ = full.si * set_;
   if (reseat) reseat_ = reseat->si - atmosphere;
   else if (blowdown) reseat_ = set_ * (1.0 - blowdown->si);
-  else if (!proportional_) s.error_here(fmt::format("'{}' needs 'reseat' or 'blowdown': a pop valve shuts below its set pressure", s.path()));
+  else if (!proportional_ && !s.has("reseat") && !s.has("blowdown")) s.error_here(fmt::format("'{}' needs 'reseat' or 'blowdown': a pop valve shuts below its set pressure", s.path()));
   if ((reseat || blowdown) && reseat_ >= set_)
     s.error(reseat ? "reseat" : "blowdown", fmt::format("'{}': reseat must be below set; at or above it the valve would chatter without end", s.path()));
   if (blowdown && blowdown->si >= 1.0) s.error("blowdown", fmt::format("'{}.blowdown' must be below 100 %", s.path()));
@@ -54,7 +54,9 @@ void ReliefDevice::read(Section& s) {
 
 void ReliefDevice::declare(Layout& layout) {
   from_ = Endpoint::at_space(protects_);
-  to_ = to_reference_.given() && to_reference_.name != "atmosphere" ? Endpoint::at_space(to_reference_) : Endpoint::at_atmosphere();
+  to_ = to_reference_.given() && to_reference_.name != "atmosphere" ? Endpoint::at_space(to_reference_, true) : Endpoint::at_atmosphere();
+  if (to_.is_space() && protects_.given() && to_reference_.name == protects_.name)
+    layout.error(to_reference_.place, fmt::format("relief device '{}' discharges from '{}' to itself", name, protects_.name));
   from_.declare(layout);
   to_.declare(layout);
   const int outlet = to_.is_space() ? to_.space() : -1;

@@ -6,7 +6,7 @@ namespace gaskettle {
 
 void Stirrer::read(Section& s) {
   in_ = s.reference("in", "gas space", "the gas it stirs", true);
-  s.exactly_one_of({"power", "torque", "power_number"});
+  const bool one_way = s.exactly_one_of({"power", "torque", "power_number"});
   power_spec_ = s.signal("power", unit_kinds::power, "shaft power into the gas", Range::not_negative);
   torque_spec_ = s.signal("torque", unit_kinds::torque, "shaft torque, with speed", Range::not_negative);
   if (const auto np = s.optional_quantity("power_number", unit_kinds::number, "of the impeller, with diameter and speed", Range::not_negative))
@@ -14,7 +14,7 @@ void Stirrer::read(Section& s) {
   if (const auto d = s.optional_quantity("diameter", unit_kinds::length, "of the impeller", Range::positive)) diameter_ = *d;
   speed_spec_ = s.signal("speed", unit_kinds::rotation, "of the shaft", Range::not_negative);
   top_speed_ = s.optional_quantity("top_speed", unit_kinds::rotation, "what a controller may ask for at most", Range::positive);
-  if (s.describing()) return;
+  if (s.describing() || !one_way) return;
   way_ = s.has("power") ? Way::power : (s.has("torque") ? Way::torque : Way::impeller);
   if (way_ == Way::impeller && !s.has("diameter")) s.error_here(fmt::format("'{}' needs 'diameter' beside 'power_number'", s.path()));
   if (way_ != Way::power && !s.has("speed") && !s.has("top_speed"))

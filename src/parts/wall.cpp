@@ -11,6 +11,7 @@ namespace gaskettle {
 
 void Wall::read(Section& s) {
   around_ = s.reference("around", "gas space", "the gas it encloses", true);
+  has_area_ = s.has("area");
   stated_area_ = s.optional_quantity("area", unit_kinds::area, "of the inner face (the whole wetted area of the shape, less what other walls state)", Range::positive);
   s.list("layers", "from inside out", true, [this](Section& layer, int i) {
     Layer l;
@@ -18,7 +19,10 @@ void Wall::read(Section& s) {
     else l.material = {"", 1.0, 1.0, {{293.15, 1.0}}, 0.0, ""};
     l.thickness = layer.quantity("thickness", unit_kinds::length, "of this layer", Range::positive);
     if (const auto c = layer.optional_quantity("contact", unit_kinds::contact_resistance, "to the layer before", Range::not_negative)) l.contact = *c;
-    if (i == 0 && l.contact > 0.0 && !layer.describing()) layer.error("contact", fmt::format("'{}': the first layer has no layer before it", layer.path()));
+    if (i == 0 && l.contact > 0.0 && !layer.describing()) {
+      layer.error("contact", fmt::format("'{}': the first layer has no layer before it", layer.path()));
+      l.contact = 0.0;
+    }
     layers_.push_back(l);
   });
   if (const auto b = s.optional_quantity("bridges", unit_kinds::conductance, "from face to face past the layers: flanges, supports", Range::not_negative)) bridges_ = *b;
@@ -29,6 +33,8 @@ void Wall::read(Section& s) {
   }
   auto to = s.child("to", "another gas space on the other side, instead of the surroundings");
   if (to) to_ = to->reference("space", "gas space", "on the other side", true);
+  if (to_.given() && to_.name == around_.name)
+    to->error("space", fmt::format("'{}' has '{}' on both sides, the same gas space", s.path(), around_.name));
   if (auto outside = s.child("outside", "the face away from the gas", true)) {
     outside_.read(*outside, to.has_value() && !s.describing());
     outside_emissivity_ = outside->quantity("emissivity", unit_kinds::number, "of the outer face", Range::fraction, "0");
@@ -41,9 +47,12 @@ void Wall::read(Section& s) {
 }
 
 void Wall::declare(Layout& layout) {
-  if (!stated_area_) return;
-  for (SpaceInfo& space : layout.spaces)
-    if (space.name == around_.name) space.stated_wall_area += stated_area_->si;
+  for (SpaceInfo& space : layout.spaces) {
+    if (space.name != around_.name) continue;
+    if (stated_area_) space.stated_wall_area += stated_area_->si;
+    else if (!has_area_ && ++space.whole_walls > 1 && space.shape.kind != Shape::Kind::unknown)
+      layout.error(place, fmt::format("wall '{}' needs 'area': only one wall of '{}' can take what the others leave of its shape", name, space.name));
+  }
 }
 
 void Wall::connect(Layout& layout) {
@@ -54,9 +63,10 @@ void Wall::connect(Layout& layout) {
   if (other != nullptr) other_space_ = other->index;
   double area = stated_area_ ? stated_area_->si : space->shape.area() - space->stated_wall_area;
   if (!(area > 0.0)) {
-    layout.error(place, fmt::format("wall '{}' needs 'area': {}", name,
-                                    space->shape.kind == Shape::Kind::unknown ? "its gas space states a volume, not a shape"
-                                                                              : "the other walls already take the whole of the shape"));
+    const std::string why = space->shape.kind == Shape::Kind::unknown
+                                ? "its gas space states a volume, not a shape"
+                                : fmt::format("the other walls take {:.4g} m2, the whole shape has {:.4g} m2", space->stated_wall_area, space->shape.area());
+    if (!has_area_ && layout.sound(space->name)) layout.error(place, fmt::format("wall '{}' needs 'area': {}", name, why));
     area = 1.0;
   }
   area_ = area * space->count;

@@ -92,6 +92,7 @@ private:
   };
   std::vector<Layer> layers_;
   std::optional<Value> stated_area_, stated_start_;
+  bool has_area_ = false;  // states an area, readable or not
   double bridges_ = 0.0, inside_emissivity_ = 0.0, outside_emissivity_ = 0.0;
   FilmUse inside_, outside_;
   SignalSpec facing_spec_, flux_spec_;

@@ -31,26 +31,31 @@ bool good_name(ReadContext& context, const std::string& name, const Place& place
 template <class F> void for_each_named(ReadContext& context, const Node* map, const std::string& section, F&& read) {
   if (map == nullptr || map->kind == Node::Kind::null) return;
   if (!map->is_map()) {
-    context.problems.add(map->place, fmt::format("'{}' should be a map of names", section));
+    context.problems.add(map->place, fmt::format("'{}' should be a map of names, not {}", section, map->is_list() ? "a list" : "'" + map->text + "'"));
     return;
   }
   for (const Node::Entry& e : map->entries) {
-    if (!good_name(context, e.key, e.key_place)) continue;
+    const std::size_t before = context.problems.count();
+    good_name(context, e.key, e.key_place);
     Section s(context, &e.value, section + "." + e.key);
     if (e.value.is_map()) read(e.key, e.key_place, s);
-    else s.node();
+    if (context.problems.count() > before) context.unsound.insert(e.key);
   }
 }
 
 Species read_own_gas(Section& s, const std::string& name) {
   const Value molar_mass = s.quantity("molar_mass", unit_kinds::molar_mass, "of the gas", Range::positive);
   double cp = 1000.0;
+  bool readable = molar_mass.given && s.has("cp");
   const Node* node = s.raw("cp", "specific heat (J/kg/K) or molar specific heat (J/mol/K)", "at constant pressure, constant", true);
   if (node != nullptr && node->is_scalar()) {
     try {
-      cp = parse_quantity(node->text, unit_kinds::specific_heat).value;
+      cp = parse_quantity(node->text, unit_kinds::molar_specific_heat).value / molar_mass.si;
+      readable = molar_mass.given;
     } catch (const UnitError&) {
-      if (const auto molar = read_value(s.context(), *node, s.path() + ".cp", unit_kinds::molar_specific_heat, Range::positive)) cp = molar->si / molar_mass.si;
+      // Not by mole: then by mass, as most write it and as the message says.
+      if (const auto by_mass = read_value(s.context(), *node, s.path() + ".cp", unit_kinds::specific_heat, Range::positive)) cp = by_mass->si;
+      else readable = false;
     }
   } else if (node != nullptr) {
     s.error("cp", fmt::format("'{}.cp' should be a specific heat such as 1000 J/kg/K", s.path()));
@@ -61,7 +66,7 @@ Species read_own_gas(Section& s, const std::string& name) {
   try {
     return constant_cp_gas(name, molar_mass, cp, plain(viscosity), plain(conductivity));
   } catch (const std::invalid_argument& e) {
-    if (!s.describing()) s.error_here(fmt::format("'{}': {}", s.path(), e.what()));
+    if (!s.describing() && readable) s.error("cp", fmt::format("'{}': {}", s.path(), e.what()));
     return constant_cp_gas(name, 0.028, 1040.0);
   }
 }
@@ -73,7 +78,7 @@ RunSettings read_run(Section& s) {
   r.time_unit = until.unit;
   const auto every = s.optional_quantity("record_every", unit_kinds::time, "between rows of the record (until / 1000)", Range::positive);
   r.record_every = every ? every->si : r.until / 1000.0;
-  if (every && r.until / r.record_every > 2e7) s.error("record_every", fmt::format("'run.record_every' would make {:.3g} rows; 20 million is the most", r.until / r.record_every));
+  if (every && until.given && r.until / r.record_every > 2e7) s.error("record_every", fmt::format("'run.record_every' would make {:.3g} rows; 20 million is the most", r.until / r.record_every));
   r.rtol = s.quantity("rtol", unit_kinds::number, "relative accuracy of a step", Range::positive, "1e-8");
   if (!s.describing() && (r.rtol < 1e-13 || r.rtol > 1e-2)) {
     s.error("rtol", "'run.rtol' must lie between 1e-13 and 1e-2");
@@ -102,7 +107,9 @@ template <class... Part> void read_kinds(Model& model, ReadContext& context, Sec
 }
 
 template <class... Part> void describe_kinds(ReadContext& context, PartKinds<Part...>) {
+  Section top(context, "");
   const auto describe = [&]<class P>(P part) {
+    top.raw(P::section, std::string("map of NAME: ") + P::kind, P::meaning, false);
     Section s(context, std::string(P::section) + ".NAME");
     part.read(s);
   };
@@ -121,7 +128,7 @@ void read_watches(Model& model, ReadContext& context, const Node& root) {
 }
 
 void read_top(Section& top) {
-  top.raw("gaskettle", "1", "version of the model format", true);
+  top.raw("gaskettle", "1", "version of the model format", top.describing());  // asked for where the file is opened
   top.raw("gases", "map of NAME: gas", "gases of one's own", false);
   top.raw("materials", "map of NAME: material", "materials of one's own", false);
   top.raw("surroundings", "map", "what the vessel stands in", false);
@@ -129,7 +136,7 @@ void read_top(Section& top) {
   top.raw("limits", "map of NAME: limit", "what is not to be exceeded", false);
 }
 
-template <class... Part> void check_names(const Model& model, ReadContext& context, PartKinds<Part...>) {
+template <class... Part> void check_names(const Model& model, const Node& root, ReadContext& context, PartKinds<Part...>) {
   std::map<std::string, std::string> taken;
   const auto check = [&]<class P>(const std::vector<P>& list) {
     for (const P& p : list) {
@@ -138,8 +145,9 @@ template <class... Part> void check_names(const Model& model, ReadContext& conte
     }
   };
   (check(std::get<std::vector<Part>>(model.parts)), ...);
-  if (std::get<std::vector<GasSpace>>(model.parts).empty())
-    context.problems.add({}, "the model has no gas space; it needs at least one under 'gas_spaces'");
+  const Node* spaces = root.find("gas_spaces");
+  const bool none = spaces == nullptr || (spaces->is_map() && spaces->entries.empty());
+  if (none) context.problems.add(spaces != nullptr ? spaces->place : root.place, "the model has no gas space; it needs at least one under 'gas_spaces'");
 }
 }  // namespace
 
@@ -152,19 +160,20 @@ Model read_model(const Node& root, ReadContext& context) {
   model.notes = top.text("notes", "for the reader", "");
   model.gas_model = top.choice("gas_model", {"auto", "ideal", "cubic", "reference"}, "how gas properties are found", "auto");
   if (model.gas_model == "cubic" || model.gas_model == "reference") top.error("gas_model", fmt::format("'gas_model: {}' is not built yet; use auto or ideal", model.gas_model));
-  model.surroundings = read_surroundings(context, root.find("surroundings"));
   for_each_named(context, root.find("gases"), "gases", [&](const std::string& name, const Place& place, Section& s) {
     if (find_gas(name)) context.problems.add(place, fmt::format("'{}' is a built-in gas; give your own another name", name));
     model.own_gases.emplace(name, read_own_gas(s, name));
     context.own_gases.push_back(name);
   });
+  // After the gases: one of them may be what the surroundings are made of.
+  model.surroundings = read_surroundings(context, root.find("surroundings"));
   for_each_named(context, root.find("materials"), "materials", [&](const std::string& name, const Place&, Section& s) {
     context.own_materials.push_back(read_material_map(s, name));
   });
   if (auto run = top.child("run", "how long, how finely, how accurately", true)) model.run = read_run(*run);
   read_kinds(model, context, top, root, Catalogue{});
   read_watches(model, context, root);
-  check_names(model, context, Catalogue{});
+  check_names(model, root, context, Catalogue{});
   model.defaults_used = context.defaults_used;
   return model;
 }
@@ -192,6 +201,7 @@ std::vector<KeyDoc> describe_model() {
   }
   describe_kinds(context, Catalogue{});
   describe_watches(context);
+  Section(context, "").raw("run", "map", "how long, how finely, how accurately", true);
   Section run(context, "run");
   read_run(run);
   return docs;

@@ -21,25 +21,40 @@ Plant::Plant(Model model, ReadContext& context) : model_(std::move(model)), layo
 
 Plant::~Plant() = default;
 
+/// One step of laying out one part. Who stumbles over a mistake is noted as unsound, so that those who refer to it
+/// are not blamed in turn; and an exception after a reported problem is only its echo.
+template <class Part, class Step> void Plant::attempt(const Part& part, Step&& step) {
+  const std::size_t before = layout_.troubles();
+  bool failed = false;
+  try {
+    step();
+  } catch (const std::exception& e) {
+    failed = true;
+    if (before == 0) layout_.error(part.place, fmt::format("{} '{}': {}", Part::kind, part.name, e.what()));
+  }
+  if (failed || layout_.troubles() > before) layout_.unsound.insert(part.name);
+}
+
 void Plant::lay_out(ReadContext& context) {
   layout_.own_gases = model_.own_gases;
   layout_.surroundings_gas = model_.surroundings.gas;
   layout_.run_length = model_.run.until;
   layout_.rtol = model_.run.rtol;
+  layout_.unsound = context.unsound;
   connect_surroundings(model_.surroundings, layout_);
-  for_each_part(model_.parts, [&](auto& p) { p.declare(layout_); });
+  for_each_part(model_.parts, [&](auto& p) { attempt(p, [&] { p.declare(layout_); }); });
   if (layout_.spaces.empty()) return;
   layout_.close_gases();
   claim_books();
   for_each_part(model_.parts, [&](auto& p) {
-    // Later parts need what earlier ones claim; with a problem found, going on would only add false ones.
-    p.connect(layout_);
+    attempt(p, [&] { p.connect(layout_); });
     layout_.part_names.push_back(p.name);
     layout_.part_kinds.emplace_back(std::decay_t<decltype(p)>::kind);
   });
   const auto pistons = std::get<std::vector<Piston>>(model_.parts).size();
   layout_.scratch_size = pistons * (pistons + 1);
   watch_.connect(model_, context, layout_);
+  if (!context.problems.empty()) return;  // nobody will run it
   claim_guards();
   size_states();
   prepare_workspaces();

@@ -15,12 +15,13 @@ struct TargetKeys {
   const Node *reaches, *within, *of;
   std::string direction;
   std::optional<Value> duration;
+  bool one_kind = true;  ///< reaches or settles_within, not both or neither
 };
 
 TargetKeys read_target(Section& s) {
   TargetKeys k;
   k.when = s.reference("when", "channel", "the quantity watched", true);
-  s.exactly_one_of({"reaches", "settles_within"});
+  k.one_kind = s.exactly_one_of({"reaches", "settles_within"});
   k.reaches = s.raw("reaches", "value in the channel's unit", "the first time it has this value", false);
   k.direction = s.choice("direction", {"rising", "falling", "either"}, "in which direction it reaches the value", "either");
   k.after = s.reference("after", "target", "only after this one was reached", false);
@@ -34,15 +35,16 @@ struct LimitKeys {
   Reference of, minus, rate_of;
   const Node *below, *above, *design;
   std::optional<Value> accumulation;
+  bool one_quantity = true, one_bound = true;
 };
 
 LimitKeys read_limit(Section& s) {
   LimitKeys k;
-  s.exactly_one_of({"of", "rate_of"});
+  k.one_quantity = s.exactly_one_of({"of", "rate_of"});
   k.of = s.reference("of", "channel", "the quantity limited", false);
   k.minus = s.reference("minus", "channel", "subtracted: the limit is on the difference", false);
   k.rate_of = s.reference("rate_of", "channel", "the limit is on its rate of change", false);
-  s.exactly_one_of({"below", "above", "design"});
+  k.one_bound = s.exactly_one_of({"below", "above", "design"});
   k.below = s.raw("below", "value in the channel's unit", "it stays at or below this", false);
   k.above = s.raw("above", "value in the channel's unit", "it stays at or above this", false);
   k.design = s.raw("design", "pressure", "design pressure, with accumulation", false);
@@ -66,25 +68,32 @@ void Watch::connect_target(const WatchSpec& spec, ReadContext& context, Layout& 
   t.channel = layout.channel(k.when);
   t.direction = k.direction == "rising" ? 1 : (k.direction == "falling" ? -1 : 0);
   if (k.after.given()) {
-    for (std::size_t i = 0; i < targets_.size(); ++i)
+    std::vector<std::string> names;
+    for (std::size_t i = 0; i < targets_.size(); ++i) {
+      names.push_back(targets_[i].name);
       if (targets_[i].name == k.after.name) t.after = static_cast<int>(i);
-    if (t.after < 0) layout.error(k.after.place, fmt::format("there is no target '{}' before this one", k.after.name));
+    }
+    const std::string near = nearest_name(k.after.name, names);
+    if (t.after < 0 && !layout.excuse(k.after.name))
+      layout.error(k.after.place, fmt::format("there is no target '{}' before this one{}", k.after.name, near.empty() ? "" : "; did you mean '" + near + "'?"));
   }
-  if (t.channel >= 0) {
+  if (t.channel >= 0 && k.one_kind) {
     const UnitKind kind = layout.channels[t.channel].kind;
-    const auto value = [&](const Node* n, const char* key, const UnitKind& u) {
-      const auto v = n == nullptr ? std::nullopt : read_value(context, *n, s.path() + "." + key, u, Range::any);
+    const auto value = [&](const Node* n, const char* key, const UnitKind& u, Range range = Range::any) {
+      const auto v = n == nullptr ? std::nullopt : read_value(context, *n, s.path() + "." + key, u, range);
       if (v) t.unit = v->unit;
       return v ? v->si : 0.0;
     };
     if (k.within != nullptr) {
       t.settles = true;
-      t.band = value(k.within, "settles_within", difference_kind(kind));
-      if (t.band <= 0.0) s.error("settles_within", fmt::format("'{}.settles_within' must be greater than zero", s.path()));
+      t.band = value(k.within, "settles_within", difference_kind(kind), Range::positive);
       t.level = value(k.of, "of", kind);
       if (k.of == nullptr) s.error_here(fmt::format("'{}' needs 'of', the middle of its band", s.path()));
-      if (!k.duration) s.error_here(fmt::format("'{}' needs 'for', how long it must stay", s.path()));
-      else t.duration = *k.duration;
+      if (!s.has("for")) s.error_here(fmt::format("'{}' needs 'for', how long it must stay", s.path()));
+      if (k.duration) {
+        t.duration = *k.duration;
+        t.duration_unit = k.duration->unit;
+      }
       if (s.has("direction")) s.error("direction", fmt::format("'{}': 'direction' goes with 'reaches'", s.path()));
     } else {
       t.level = value(k.reaches, "reaches", kind);
@@ -105,7 +114,7 @@ void Watch::connect_limit(const WatchSpec& spec, ReadContext& context, Layout& l
   if (k.minus.given()) l.minus = layout.channel(k.minus);
   if (l.rate && k.minus.given()) s.error("minus", fmt::format("'{}': 'minus' goes with 'of'", s.path()));
   if (k.accumulation && k.design == nullptr) s.error("accumulation", fmt::format("'{}': 'accumulation' goes with 'design'", s.path()));
-  if (l.channel < 0 || (k.minus.given() && l.minus < 0)) return;
+  if (l.channel < 0 || (k.minus.given() && l.minus < 0) || !k.one_quantity || !k.one_bound) return;
   const ChannelDoc& channel = layout.channels[l.channel];
   l.kind = l.rate ? per_time(channel.kind) : (l.minus >= 0 ? difference_kind(channel.kind) : channel.kind);
   l.what = l.rate ? "rate of " + channel.name : channel.name;
@@ -138,7 +147,7 @@ void Watch::connect(const Model& model, ReadContext& context, Layout& layout) {
     names.push_back(targets_[i].name);
     if (targets_[i].name == model.run.stop_when.name) stop_ = static_cast<int>(i);
   }
-  if (stop_ >= 0) return;
+  if (stop_ >= 0 || layout.excuse(model.run.stop_when.name)) return;
   const std::string near = nearest_name(model.run.stop_when.name, names);
   layout.error(model.run.stop_when.place, fmt::format("there is no target '{}'{}", model.run.stop_when.name, near.empty() ? "" : "; did you mean '" + near + "'?"));
 }
@@ -165,6 +174,8 @@ void Watch::arm(Target& t, const Workspace<double>& w) const {
     return;
   }
   t.side = t.direction != 0 ? t.direction : (x <= t.level ? 1 : -1);
+  // On the far side already, it must come back before it can be reached in its direction.
+  if (t.direction * (x - t.level) >= 0.0 && t.direction != 0) t.side = -t.direction;
 }
 
 void Watch::start(const Workspace<double>& w) {
@@ -173,7 +184,9 @@ void Watch::start(const Workspace<double>& w) {
     t.armed = false;
     if (t.channel < 0 || t.after >= 0) continue;
     arm(t, w);
-    if (!t.settles && w.out[t.channel] == t.level) t.time = w.t;
+    // Standing at the level is reaching it, unless a direction is asked for.
+    const bool there = std::abs(w.out[t.channel] - t.level) <= 1e-12 * std::abs(t.level);  // but for rounding
+    if (!t.settles && t.direction == 0 && there) t.time = w.t;
   }
   for (Limit& l : limits_) {
     l.extreme = limit_value(l, w);
@@ -209,7 +222,9 @@ void Watch::on_guard(int i, Event& e) {
   if (n < targets_.size()) {
     Target& t = targets_[n];
     const double x = e.before->out[t.channel];
-    if (!t.settles) {
+    if (!t.settles && t.direction != 0 && t.side != t.direction) {
+      t.side = t.direction;
+    } else if (!t.settles) {
       reach(t, e.time, e);
     } else if (t.inside_since == t.inside_since) {
       t.inside_since = std::numeric_limits<double>::quiet_NaN();

@@ -17,6 +17,7 @@ struct Target {
   double level = 0.0;     ///< the value to reach, or the middle of the band
   double band = 0.0;      ///< half width, where it settles
   double duration = 0.0;  ///< s, how long it must stay
+  std::string duration_unit;
   int direction = 0;      ///< +1 rising, -1 falling, 0 either
   int after = -1;         ///< the target that must come first
   std::string unit;       ///< as the model writes the level

@@ -1,10 +1,13 @@
 #include "record/hdf5_tools.hpp"
 
+#include <fcntl.h>
 #include <fmt/format.h>
 #include <sys/mman.h>
 #include <unistd.h>
 
 #include <array>
+#include <cerrno>
+#include <cstring>
 #include <limits>
 
 namespace gaskettle::hdf5 {
@@ -14,18 +17,16 @@ namespace {
 // which took minutes at 1000 channels; a bounded scale it takes at its word.
 constexpr hsize_t most_rows = hsize_t{1} << 48;
 
-// Filled by HDF5's error callback: by the time an exception is caught, handles
-// closed on the way have cleared the library's own stack. HDF5 keeps one a thread too.
-thread_local std::string last_failure;
+// The first failure since silence(), from HDF5's error callback: by the time an exception is caught, handles closed
+// on the way have cleared the library's own stack or failed in turn. HDF5 keeps its stack a thread, too.
+thread_local std::string first_failure;
 
 herr_t keep_innermost(unsigned depth, const H5E_error2_t* error, void*) {
-  if (depth == 0 && error->desc) last_failure = error->desc;
+  if (depth == 0 && error->desc && first_failure.empty()) first_failure = error->desc;
   return 0;
 }
 
-herr_t on_error(hid_t stack, void*) noexcept {
-  return H5Ewalk2(stack, H5E_WALK_UPWARD, keep_innermost, nullptr);
-}
+herr_t on_error(hid_t stack, void*) noexcept { return H5Ewalk2(stack, H5E_WALK_UPWARD, keep_innermost, nullptr); }
 
 // The system's own words out of "file write failed: ..., error message = 'No space left on device', ...".
 std::string system_words(const std::string& text) {
@@ -60,6 +61,12 @@ void keep_metadata(hid_t access_list) {
   H5Pset_mdc_config(access_list, &config);
 }
 
+// The open file underneath; null where it is not a plain one.
+const int* descriptor_of(const H5::H5File& file) {
+  void* handle = nullptr;
+  return H5Fget_vfd_handle(file.getId(), H5P_DEFAULT, &handle) < 0 ? nullptr : static_cast<const int*>(handle);
+}
+
 H5::StrType fixed_text_type(std::size_t length) {
   H5::StrType type(H5::PredType::C_S1, length + 1);
   type.setCset(H5T_CSET_UTF8);
@@ -81,18 +88,19 @@ H5::DataSpace select_rows(const H5::DataSet& dataset, hsize_t first, hsize_t cou
 
 void silence() {
   H5Eset_auto2(H5E_DEFAULT, on_error, nullptr);
-  last_failure.clear();
+  first_failure.clear();
 }
 
 std::string explain(const std::string& path, const std::string& doing, const H5::Exception& failure) {
-  const std::string detail = last_failure.empty() ? failure.getDetailMsg() : system_words(last_failure);
+  const std::string detail = first_failure.empty() ? failure.getDetailMsg() : system_words(first_failure);
   std::string help;
-  if (last_failure.find("lock file") != std::string::npos) {
-    help = "; another program may have it open, or its file system knows no locks (then set "
-           "HDF5_USE_FILE_LOCKING=FALSE)";
-  } else if (last_failure.find("truncated file") != std::string::npos) {
+  if (first_failure.find("lock file") != std::string::npos) {
+    help =
+        "; another program may have it open, or its file system knows no locks (then set "
+        "HDF5_USE_FILE_LOCKING=FALSE)";
+  } else if (first_failure.find("truncated file") != std::string::npos) {
     help = "; its end is missing, so copy it again or repeat the run";
-  } else if (last_failure.find("signature") != std::string::npos) {
+  } else if (first_failure.find("signature") != std::string::npos) {
     help = "; give a file that a run has written";
   }
   return fmt::format("{}: could not {}: {}{}", path, doing, detail, help);
@@ -109,12 +117,22 @@ H5::H5File create_file(const std::string& path) {
   return H5::H5File(path, H5F_ACC_EXCL, creation, access);
 }
 
+void take_space(const H5::H5File& file, const std::string& path, hsize_t& taken) {
+  const int* descriptor = descriptor_of(file);
+  const hsize_t size = file.getFileSize();
+  if (!descriptor || size <= taken) return;
+  const int status = fallocate(*descriptor, 0, static_cast<off_t>(taken), static_cast<off_t>(size - taken));
+  if (status != 0 && (errno == ENOSPC || errno == EDQUOT || errno == EFBIG)) {
+    throw RecordError(fmt::format("{}: could not write the record: {}", path, std::strerror(errno)));
+  }
+  taken = size;
+}
+
 void drop_pending_writes(const H5::H5File& file) {
-  void* handle = nullptr;
-  if (H5Fget_vfd_handle(file.getId(), H5P_DEFAULT, &handle) < 0 || !handle) return;
+  const int* descriptor = descriptor_of(file);
   const int sink = memfd_create("gaskettle", MFD_CLOEXEC);
   if (sink < 0) return;
-  dup2(sink, *static_cast<const int*>(handle));
+  if (descriptor) dup2(sink, *descriptor);
   close(sink);
 }
 
@@ -151,17 +169,15 @@ H5::DataSet create_column(const H5::Group& group, const std::string& name, const
 
 H5::DataSet create_fixed(const H5::Group& group, const std::string& name, std::span<const double> values) {
   const hsize_t size = values.size();
-  H5::DataSet dataset =
-      group.createDataSet(name, H5::PredType::IEEE_F64LE, H5::DataSpace(1, &size), H5::DSetCreatPropList::DEFAULT,
-                          H5::DSetAccPropList::DEFAULT, utf8_links());
+  H5::DataSet dataset = group.createDataSet(name, H5::PredType::IEEE_F64LE, H5::DataSpace(1, &size),
+                                            H5::DSetCreatPropList::DEFAULT, H5::DSetAccPropList::DEFAULT, utf8_links());
   dataset.write(values.data(), H5::PredType::NATIVE_DOUBLE);
   return dataset;
 }
 
 void create_long_text(const H5::Group& group, const std::string& name, const std::string& text) {
-  H5::DataSet dataset =
-      group.createDataSet(name, text_type(), H5::DataSpace(H5S_SCALAR), H5::DSetCreatPropList::DEFAULT,
-                          H5::DSetAccPropList::DEFAULT, utf8_links());
+  H5::DataSet dataset = group.createDataSet(name, text_type(), H5::DataSpace(H5S_SCALAR),
+                                            H5::DSetCreatPropList::DEFAULT, H5::DSetAccPropList::DEFAULT, utf8_links());
   const char* start = text.c_str();
   dataset.write(&start, text_type());
 }

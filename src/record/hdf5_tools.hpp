@@ -31,8 +31,11 @@ auto guarded(const std::string& path, const std::string& doing, Action&& action)
 
 /// A new file whose links and attributes keep the order they were made in.
 H5::H5File create_file(const std::string& path);
-/// After a failed write: what the library still holds back goes nowhere, so that the file can be closed. Closing would
-/// try the write again, and HDF5 1.10 crashes, at once or when the program ends, after a close that failed.
+/// Takes the disk space that a flush will need, from byte `taken` on, which moves on. A flush must not fail for want
+/// of it: HDF5 1.10.8 cannot close a file after a failed flush and crashes, at once or when the program ends.
+/// Throws RecordError naming `path`. On file systems that cannot promise space it does nothing.
+void take_space(const H5::H5File& file, const std::string& path, hsize_t& taken);
+/// After a failed write: what the library still holds back goes nowhere, so that closing does not try it again.
 void drop_pending_writes(const H5::H5File& file);
 H5::Group create_group(const H5::Group& parent, const std::string& name);
 

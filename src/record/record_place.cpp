@@ -39,8 +39,8 @@ void check_folder(const std::string& path) {
     throw RecordError(fmt::format("{}: the folder {} does not exist; create it first", path, folder.string()));
   }
   if (access(folder.c_str(), W_OK | X_OK) != 0) {
-    throw RecordError(fmt::format("{}: cannot write in the folder {}: {}", path, folder.string(),
-                                  std::strerror(errno)));
+    throw RecordError(
+        fmt::format("{}: cannot write in the folder {}: {}", path, folder.string(), std::strerror(errno)));
   }
 }
 

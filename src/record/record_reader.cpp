@@ -95,8 +95,8 @@ private:
     std::vector<std::string> known;
     for (const ChannelInfo& channel : channels_) known.push_back(channel.name);
     const std::string near = nearest_name(name, known);
-    const std::string help = near.empty() ? fmt::format("it has {} channels", known.size())
-                                          : fmt::format("did you mean {}?", near);
+    const std::string help =
+        near.empty() ? fmt::format("it has {} channels", known.size()) : fmt::format("did you mean {}?", near);
     return fmt::format("{}: has no channel {}; {}", path_, name, help);
   }
 };
@@ -132,8 +132,7 @@ std::vector<double> RecordReader::channel(const std::string& name, std::size_t f
   if (first > rows() || count > rows() - first) {
     throw RecordError(fmt::format("{}: rows {} to {} were asked for; it has {}", path(), first, first + count, rows()));
   }
-  return file_->guarded("read " + name,
-                        [&] { return hdf5::read_rows(file_->file_.openDataSet(name), first, count); });
+  return file_->guarded("read " + name, [&] { return hdf5::read_rows(file_->file_.openDataSet(name), first, count); });
 }
 
 std::vector<double> RecordReader::profile(const std::string& name) const {

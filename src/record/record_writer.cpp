@@ -89,6 +89,7 @@ private:
   void create_columns(H5::Group& root, hdf5::ScaleBook& scales);
   void create_profiles(H5::Group& root, hdf5::ScaleBook& scales, std::size_t time_scale);
   void write(bool flush_now);
+  void flush_file();
   void write_block();
   bool flush_is_due() const;
   void write_gathered(H5::DataSet& dataset, std::size_t offset, std::size_t width);
@@ -111,6 +112,7 @@ private:
   std::vector<H5::DataSet> profiles_;
   hdf5::Table events_, targets_, limits_;
   std::chrono::steady_clock::time_point last_flush_ = std::chrono::steady_clock::now();
+  hsize_t space_taken_ = 0;
   std::size_t rows_written_ = 0;
   double last_time_ = -std::numeric_limits<double>::infinity();
   std::vector<double> times_;
@@ -164,7 +166,7 @@ void RecordWriter::File::create() {
   limits_ = hdf5::Table(outcome, "limits", "limit", hdf5::limit_columns(), scales);
   scales.write_back_references();
   write_provenance(root, settings_.provenance);
-  file_.flush(H5F_SCOPE_GLOBAL);
+  flush_file();
 }
 
 void RecordWriter::File::create_columns(H5::Group& root, hdf5::ScaleBook& scales) {
@@ -203,14 +205,13 @@ void RecordWriter::File::check_open() const {
 void RecordWriter::File::append(double time, std::span<const double> values, std::span<const double> profile_values) {
   check_open();
   if (!(time > last_time_) || !std::isfinite(time)) {
-    throw RecordError(fmt::format("{}: a row at {} s follows one at {} s; times must increase strictly",
-                                  settings_.path, time, last_time_));
+    throw RecordError(fmt::format("{}: a row at {} s follows one at {} s; times must increase strictly", settings_.path,
+                                  time, last_time_));
   }
   const std::size_t wanted = settings_.channels.size();
   if (values.size() != wanted || profile_values.size() != row_width_ - wanted) {
     throw RecordError(fmt::format("{}: a row has {} + {} values; {} channels and {} profile values were declared",
-                                  settings_.path, values.size(), profile_values.size(), wanted,
-                                  row_width_ - wanted));
+                                  settings_.path, values.size(), profile_values.size(), wanted, row_width_ - wanted));
   }
   last_time_ = time;
   times_.push_back(time);
@@ -239,10 +240,15 @@ void RecordWriter::File::write(bool flush_now) {
   hdf5::guarded(temporary_, "write the record", [&] {
     write_block();
     write_events();
-    if (flush_now) file_.flush(H5F_SCOPE_GLOBAL);
+    if (flush_now) flush_file();
   });
   failed_ = false;
   if (flush_now) last_flush_ = std::chrono::steady_clock::now();
+}
+
+void RecordWriter::File::flush_file() {
+  hdf5::take_space(file_, temporary_, space_taken_);
+  file_.flush(H5F_SCOPE_GLOBAL);
 }
 
 void RecordWriter::File::write_block() {
@@ -306,9 +312,9 @@ std::string RecordWriter::File::finish(const Outcome& outcome) {
           },
           value);
     }
-    file_.flush(H5F_SCOPE_GLOBAL);
+    flush_file();
     set_partial(partial);
-    file_.flush(H5F_SCOPE_GLOBAL);
+    flush_file();
   });
   failed_ = false;
   close();

@@ -40,8 +40,9 @@ public:
   };
 
   /// Refuses an existing file (at the path, or left at PATH.partial) that is not a record of the same identity,
-  /// unless told to overwrite (what a run killed before its first flush has left is replaced); folders that are missing or not writable; a PATH.partial that another run is
-  /// writing; names that are empty, doubled, reserved (`time`, `events`, `outcome`, `provenance`) or hold a slash.
+  /// unless told to overwrite (what a run killed before its first flush has left is replaced); folders that are missing
+  /// or not writable; a PATH.partial that another run is writing; names that are empty, doubled, reserved (`time`,
+  /// `events`, `outcome`, `provenance`) or hold a slash.
   explicit RecordWriter(Settings settings);
 
   /// Writes what there is and closes, leaving PATH.partial, unless finished or abandoned.

@@ -28,7 +28,7 @@ std::string targets_block(const Plant& plant, const CaseResult& r, const Present
   std::vector<std::vector<std::string>> rows;
   for (const Target& t : r.targets) {
     const ChannelDoc& c = plant.layout().channels[t.channel];
-    std::string what = t.settles ? fmt::format("{} within {} of {} for {}", c.name, p.show_difference(t.band, c.kind, ""), p.show(t.level, c.kind, t.unit), p.time(t.duration))
+    std::string what = t.settles ? fmt::format("{} within {} of {} for {}", c.name, p.show_difference(t.band, c.kind, ""), p.show(t.level, c.kind, t.unit), p.show(t.duration, unit_kinds::time, t.duration_unit))
                                  : fmt::format("{} reaches {}", c.name, p.show(t.level, c.kind, t.unit));
     rows.push_back({t.name, what, t.reached() ? "at " + p.time(t.time) : "NOT REACHED"});
   }
@@ -59,7 +59,7 @@ std::string reliefs_block(const CaseResult& r, const Presenter& p) {
   return "\nRelief devices\n" + table(rows);
 }
 
-std::string events_block(const Plant& plant, const CaseResult& r, const Presenter& p) {
+std::string events_block(const CaseResult& r, const Presenter& p) {
   if (r.events.empty()) return "\nEvents: none\n";
   std::vector<std::vector<std::string>> rows;
   const std::size_t n = r.events.size();
@@ -71,7 +71,6 @@ std::string events_block(const Plant& plant, const CaseResult& r, const Presente
     const LoggedEvent& e = r.events[i];
     rows.push_back({p.time(e.time), e.part, e.what});
   }
-  (void)plant;
   return fmt::format("\nEvents ({})\n", n) + table(rows, {0});
 }
 
@@ -79,7 +78,8 @@ std::string energy_block(const CaseResult& r, const Presenter& p) {
   const Books& b = r.books;
   std::vector<std::vector<std::string>> rows;
   const auto row = [&](const std::string& name, double joule, const std::string& meaning) {
-    if (joule != 0.0) rows.push_back({name, p.scaled(joule, unit_kinds::energy), meaning});
+    // What is only rounding beside the rest is no term.
+    if (std::abs(joule) > 1e-9 * b.throughput) rows.push_back({name, p.scaled(joule, unit_kinds::energy), meaning});
   };
   for (int i = 0; i < first_work_term; ++i) row(ledger_names[i], b.term[i], ledger_meanings[i]);
   row("boundary_work", b.boundary_work, "work done by the gas on its moving boundaries, of which");
@@ -156,7 +156,7 @@ std::string answer_text(const Plant& plant, const CaseResult& r, const AnswerCon
   out += reliefs_block(r, p);
   out += "\nGas models\n" + gas_model_line(plant);
   for (const std::string& w : r.warnings) out += wrapped("warning: " + w, 100, "  ");
-  out += events_block(plant, r, p);
+  out += events_block(r, p);
   out += energy_block(r, p);
   out += loss_block(plant, r, p);
   out += bookkeeping_block(r);

@@ -58,8 +58,14 @@ std::string Presenter::show_difference(double si, const UnitKind& kind, const st
 
 std::string Presenter::time(double seconds) const {
   if (!std::isfinite(seconds)) return "-";
-  if (std::abs(seconds) < 1.0 && seconds != 0.0) return format_number(seconds, 5) + " s";
-  return format_quantity(seconds, unit_kinds::time, time_unit_.empty() ? "s" : time_unit_, 5);
+  // Small times of a long run read better in a smaller unit.
+  static const std::vector<std::pair<std::string, double>> smaller = {{"h", 3600.0}, {"min", 60.0}, {"s", 1.0}};
+  if (seconds == 0.0) return "0 s";
+  double unit = parse_quantity("1 " + (time_unit_.empty() ? "s" : time_unit_), unit_kinds::time).value;
+  if (std::abs(seconds) >= unit) return format_quantity(seconds, unit_kinds::time, time_unit_.empty() ? "s" : time_unit_, 5);
+  for (const auto& [name, size] : smaller)
+    if (size < unit && std::abs(seconds) >= size) return format_number(seconds / size, 5) + " " + name;
+  return format_number(seconds, 5) + " s";
 }
 
 std::string table(const std::vector<std::vector<std::string>>& rows, const std::vector<std::size_t>& right) {

@@ -29,14 +29,21 @@ void EventSearch::disarm(int q, double g) {
   margin_[q] = g < 0 ? -2 * g : 0;
 }
 
+void EventSearch::moved_on(const double* g) {
+  for (int q = 0; q < guards_; ++q) {
+    just_fired_[q] = just_fired_[q] && still_at_root(q, g[q]);
+    margin_[q] = 0;
+  }
+}
+
 void EventSearch::disarm_jumped(int q) {
   armed_[q] = 0;
   just_fired_[q] = 0;
   margin_[q] = 0;
 }
 
-bool EventSearch::still_at_root(int q) const {
-  return std::fabs(at(0, q)) <= 4 * std::fabs(fired_at_[q]) + std::numeric_limits<double>::min();
+bool EventSearch::still_at_root(int q, double g) const {
+  return std::fabs(g) <= 4 * std::fabs(fired_at_[q]) + std::numeric_limits<double>::min();
 }
 
 void EventSearch::pending(const double* g, std::vector<int>& fired) const {
@@ -48,7 +55,7 @@ void EventSearch::pending(const double* g, std::vector<int>& fired) const {
 bool EventSearch::came_from_below(int q) const {
   bool armed = armed_[q];
   for (int r = 0; r + 1 < rows_; ++r) {
-    armed = armed || at(r, q) < -margin_[q];
+    armed = armed || at(r, q) < -margin_at(r, q);
     if (armed && at(r, q) < 0) return true;
   }
   return false;

@@ -38,8 +38,9 @@ public:
   void disarm(int q, double g);
   /// The guard has fired because an event made it jump above zero.
   void disarm_jumped(int q);
-  /// The run has moved away from where guards last fired.
-  void forget_firing() { std::fill(just_fired_.begin(), just_fired_.end(), char{0}); }
+  /// The run has moved on to where the guards are g: those that are still exactly where they fired count as just
+  /// fired; any that is below zero may be armed.
+  void moved_on(const double* g);
   /// Armed guards above zero: they fire where the state is.
   void pending(const double* g, std::vector<int>& fired) const;
 
@@ -78,13 +79,15 @@ private:
   };
 
   double tolerance(double t) const { return time_tolerance(t, run_length_, t - times_[0]); }
+  /// Where a guard fired it must be clearly below zero to be armed; at any later look, below zero.
+  double margin_at(int r, int q) const { return r == 0 ? margin_[q] : 0; }
   double* row(int r) { return values_.data() + static_cast<std::size_t>(r) * guards_; }
   double at(int r, int q) const { return values_[static_cast<std::size_t>(r) * guards_ + q]; }
   Bracket between(int r, int q) const { return {times_[r], times_[r + 1], at(r, q), at(r + 1, q), 0, false}; }
   /// Armed and below zero at some look before the last one.
   bool came_from_below(int q) const;
   /// The event left the guard where it fired.
-  bool still_at_root(int q) const;
+  bool still_at_root(int q, double g) const;
   template <class Look>
   double one(Look&& look, int q, double t) {
     look(t, scratch_.data());
@@ -130,10 +133,10 @@ private:
   bool bracket(Look&& look, int q, Bracket& out) {
     if (rows_ < 2) return false;
     if (armed_[q] && at(0, q) == 0 && bracket_from_zero(look, q, out)) return true;
-    if (just_fired_[q] && still_at_root(q) && at(1, q) >= 0 && bracket_after_firing(look, q, out)) return true;
+    if (just_fired_[q] && still_at_root(q, at(0, q)) && bracket_after_firing(look, q, out)) return true;
     bool armed = armed_[q];
     for (int r = 0; r + 1 < rows_; ++r) {
-      armed = armed || at(r, q) < -margin_[q];
+      armed = armed || at(r, q) < -margin_at(r, q);
       const bool ends_below = at(r + 1, q) < 0;
       if (armed && at(r, q) < 0) {
         out = between(r, q);
@@ -164,12 +167,15 @@ private:
   /// than a short excursion is deep.
   template <class Look>
   bool bracket_after_firing(Look&& look, int q, Bracket& out) {
-    out = between(0, q);
-    const double start = out.a, first = out.ga;
-    out.level = std::max(first, 0.0);
+    const double start = times_[0], first = at(0, q);
+    int r = 1;
+    while (r + 1 < rows_ && at(r, q) == first) ++r;
+    out = {start, times_[r], first, at(r, q), std::max(first, 0.0), false};
     if (out.gb < out.level) return false;
     double slope = (out.gb - first) / (out.b - start);
-    int bends = 0;
+    // Slope at the start if the next two looks lie on a parabola: none is the first sign of a return.
+    const double wide = r + 1 < rows_ ? (at(r + 1, q) - first) / (times_[r + 1] - start) : slope;
+    int bends = r > 1 || 2 * slope - wide <= 0.05 * slope ? 1 : 0;
     bool unseen = false;
     for (int closer = 0; closer < 12 && slope > 0; ++closer) {
       const double t = start + (out.b - start) / 16;
@@ -189,7 +195,7 @@ private:
       out.gb = g;
     }
     if (first >= 0) out.level = std::nextafter(first, std::numeric_limits<double>::max());
-    return (unseen || bends >= 2) && out.gb >= out.level;
+    return (unseen || bends > 0) && out.gb >= out.level;
   }
 
   /// Below zero at both ends of interval r, but perhaps not in between.

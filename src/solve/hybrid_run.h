@@ -62,16 +62,15 @@ private:
   // ---- one turn -------------------------------------------------------------
 
   void turn() {
-    const double scheduled = problem_.next_time_event(t_);
+    double scheduled = problem_.next_time_event(t_);
     const double latest = std::min(scheduled, settings_.t_end);
     const StepReport report = stepper_.step(t_, y_.data(), latest);
     if (!report.accepted) return fail(report);
     if (!guards_have_values()) return;
     due_.clear();
     double to = search_disturbing(latest);
-    const bool time_event = to == scheduled;
-    if (!walk(to)) return;
-    commit(to, time_event);
+    if (!walk(to, scheduled)) return;
+    commit(to, to == scheduled);
   }
 
   /// Guards at the end of the step; where one has no value the step is taken back.
@@ -104,7 +103,8 @@ private:
   }
 
   /// Observer guards up to `to`. False where one of them ended the run or this turn.
-  bool walk(double to) {
+  /// One may set a time event that is due before `to`: both are then moved to it.
+  bool walk(double& to, double& scheduled) {
     double from = t_;
     while (guards_ > 0) {
       search_.earliest(
@@ -119,7 +119,7 @@ private:
       from = t_ = found_.time;
       stepper_.curve().interpolate(t_, y_.data());
       read_guards(t_, y_.data(), g_.data());
-      search_.forget_firing();
+      search_.moved_on(g_.data());
       fire(found_.fired, false);
       cascade();
       if (done_) return false;
@@ -127,6 +127,10 @@ private:
         stepper_.go_on(false);
         settle();
         return false;
+      }
+      if (const double set = problem_.next_time_event(t_); set < to) {
+        to = scheduled = set;
+        due_.clear();  // still armed, and found again from there
       }
       look()(to, g_end_.data());  // what is active may have changed
       sample(to);
@@ -144,8 +148,8 @@ private:
     t_ = to;
     const bool projected = problem_.after_step(t_, y_.data());
     stepper_.go_on(at_end && !projected);
-    search_.forget_firing();
     read_guards(t_, y_.data(), g_.data());
+    search_.moved_on(g_.data());
     if (time_event || !due_.empty()) fire(due_, time_event);
     settle();
   }

@@ -1,8 +1,8 @@
 #!/usr/bin/env bash
 # Installs a finished build under a scratch prefix, then builds and runs a project that knows gaskettle by its installed
-# package alone. Usage: packaging_test.sh CMAKE BUILD-FOLDER CONSUMER-FOLDER SCRATCH-FOLDER VERSION
+# package alone. Usage: packaging_test.sh CMAKE BUILD-FOLDER CONSUMER-FOLDER SCRATCH-FOLDER VERSION MODEL
 set -euo pipefail
-cmake=$1 build=$2 consumer=$3 scratch=$4 version=$5
+cmake=$1 build=$2 consumer=$3 scratch=$4 version=$5 model=$6
 
 fail() {
   echo "packaging: $*" >&2
@@ -36,7 +36,7 @@ attempt() {
 attempt configured "$cmake" -S "$consumer" -B "$scratch/build" -G Ninja -DCMAKE_BUILD_TYPE=Release \
   -DCMAKE_PREFIX_PATH="$prefix" -DWANTED_VERSION="$version"
 attempt built "$cmake" --build "$scratch/build"
-answer=$("$scratch/build/consumer") || fail "the user's program gave status $?, having said: $answer"
+answer=$("$scratch/build/consumer" "$model") || fail "the user's program gave status $?, having said: $answer"
 [[ $answer == "gaskettle $version" ]] || fail "the user's program said: $answer"
 
 "$prefix/bin/gaskettle" --help > "$scratch/log" 2>&1 || { cat "$scratch/log" >&2; fail "the installed program fails"; }

@@ -1,8 +1,9 @@
+#include "record/csv_export.h"
+
 #include <catch2/catch.hpp>
 #include <limits>
 #include <sstream>
 
-#include "record/csv_export.h"
 #include "unit/record/scratch.h"
 
 using namespace gaskettle;

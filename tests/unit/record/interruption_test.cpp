@@ -1,5 +1,7 @@
 // Runs that are killed, run out of room, or are very long. Each writes in a process of its own.
+#include <sched.h>
 #include <signal.h>
+#include <sys/mount.h>
 #include <sys/resource.h>
 #include <sys/wait.h>
 
@@ -45,6 +47,26 @@ void set_largest_file(rlim_t bytes) {
   limit.rlim_cur = bytes;
   setrlimit(RLIMIT_FSIZE, &limit);
 }
+
+// A disk of two pages of 4 kB that only this process sees and that ends with it; needs unprivileged name spaces.
+bool mount_small_disk(const std::string& folder) {
+  const std::string user = std::to_string(getuid());
+  const std::string group = std::to_string(getgid());
+  std::filesystem::create_directory(folder);
+  if (unshare(CLONE_NEWUSER | CLONE_NEWNS) != 0) return false;
+  // Without a user in the new name space no file can be made.
+  std::ofstream("/proc/self/setgroups") << "deny";
+  std::ofstream("/proc/self/uid_map") << "0 " + user + " 1";
+  std::ofstream("/proc/self/gid_map") << "0 " + group + " 1";
+  return mount("none", folder.c_str(), "tmpfs", 0, "size=8k") == 0 && getuid() == 0;
+}
+
+// The address sanitizer holds freed memory back to catch its use.
+#ifdef __SANITIZE_ADDRESS__
+constexpr bool freed_memory_is_kept = true;
+#else
+constexpr bool freed_memory_is_kept = false;
+#endif
 
 std::size_t resident_bytes() {
   std::size_t total = 0, resident = 0;
@@ -129,19 +151,24 @@ TEST_CASE("a full disk is reported and the program still ends", "[record]") {
 
 TEST_CASE("a disk with no room for the beginning is reported and the program still ends", "[record]") {
   const Scratch scratch;
+  const int no_small_disk = 77;
   const int status = status_of([&] {
-    set_largest_file(3000);
-    bool refused = false;
+    const std::string disk = scratch / "disk";
+    if (!mount_small_disk(disk)) return no_small_disk;
     try {
-      const RecordWriter writer(example_settings(scratch / "out.h5"));
-    } catch (const RecordError&) {
-      refused = true;
+      const RecordWriter writer(example_settings(disk + "/out.h5"));
+    } catch (const RecordError& error) {
+      const bool told = std::string(error.what()).find("No space left") != std::string::npos;
+      return told && !std::filesystem::exists(disk + "/out.h5.partial") ? 0 : 1;
     }
-    return refused ? 0 : 1;
+    return 2;
   });
   REQUIRE(WIFEXITED(status));
+  if (WEXITSTATUS(status) == no_small_disk) {
+    WARN("not checked: no small disk can be mounted here");
+    return;
+  }
   CHECK(WEXITSTATUS(status) == 0);
-  CHECK_FALSE(std::filesystem::exists(scratch / "out.h5.partial"));
 }
 
 TEST_CASE("a million rows pass through bounded memory", "[record]") {
@@ -162,7 +189,7 @@ TEST_CASE("a million rows pass through bounded memory", "[record]") {
     const std::size_t growth = resident_bytes() - at_first;
     writer.finish({});
     // The rows are 88 MB. What may grow is the index of their chunks: 245 a channel of some 24 bytes, below 1 MB.
-    return growth < 10'000'000 ? 0 : 1;
+    return growth < 10'000'000 || freed_memory_is_kept ? 0 : 1;
   });
   REQUIRE(WIFEXITED(status));
   REQUIRE(WEXITSTATUS(status) == 0);

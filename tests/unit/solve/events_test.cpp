@@ -387,21 +387,3 @@ TEST_CASE("flights that shrink without end become a storm at any rate of shrinki
       CHECK(end.time == Approx(fall * (1 + restitution) / (1 - restitution)).margin(1e-10));
     }
 }
-
-TEST_CASE("a ball on a floor whose height hides the last flights does not fall through") {
-  struct High : Ball {
-    void guards(double, const double* y, double* g) { g[0] = 1000 - y[0]; }
-  };
-  for (const Method method : methods) {
-    High ball;
-    ball.restitution = 0.3;
-    Watcher watcher(2);
-    double lowest = 1000;
-    watcher.look_ = [&](double, const double* y) { lowest = std::min(lowest, y[0]); };
-    std::vector<double> y{1000.3, 0.0};
-    Settings s = settings(4, 1e-6, method);
-    s.max_steps = 2000;
-    integrate(ball, watcher, s, y);
-    CHECK(lowest > 1000 - 1e-9);
-  }
-}
