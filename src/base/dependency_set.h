@@ -28,7 +28,8 @@ public:
     return w < words_.size() && ((words_[w] >> (index % 64)) & 1U) != 0;
   }
   /// Calls visit(index) for every input this number depends on, ascending.
-  template <class F> void for_each(F&& visit) const {
+  template <class F>
+  void for_each(F&& visit) const {
     for (std::size_t w = 0; w < words_.size(); ++w)
       for (int b = 0; b < 64; ++b)
         if ((words_[w] >> b) & 1U) visit(static_cast<int>(w) * 64 + b);

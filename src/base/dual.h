@@ -9,7 +9,8 @@
 
 namespace gaskettle {
 
-template <int K> struct Dual {
+template <int K>
+struct Dual {
   double v = 0.0;
   std::array<double, K> d{};
 
@@ -45,9 +46,18 @@ template <int K> struct Dual {
     for (int k = 0; k < K; ++k) r.d[k] = (a.d[k] - r.v * b.d[k]) * inverse;
     return r;
   }
-  friend Dual operator+(Dual a, double b) { a.v += b; return a; }
-  friend Dual operator+(double a, Dual b) { b.v += a; return b; }
-  friend Dual operator-(Dual a, double b) { a.v -= b; return a; }
+  friend Dual operator+(Dual a, double b) {
+    a.v += b;
+    return a;
+  }
+  friend Dual operator+(double a, Dual b) {
+    b.v += a;
+    return b;
+  }
+  friend Dual operator-(Dual a, double b) {
+    a.v -= b;
+    return a;
+  }
   friend Dual operator-(double a, const Dual& b) { return chain(b, a - b.v, -1.0); }
   friend Dual operator*(const Dual& a, double b) { return chain(a, a.v * b, b); }
   friend Dual operator*(double a, const Dual& b) { return chain(b, a * b.v, a); }
@@ -63,24 +73,43 @@ template <int K> struct Dual {
   }
 };
 
-template <int K> double value(const Dual<K>& x) { return x.v; }
-template <int K> Dual<K> log(const Dual<K>& a) { return Dual<K>::chain(a, std::log(a.v), 1.0 / a.v); }
-template <int K> Dual<K> exp(const Dual<K>& a) {
+template <int K>
+double value(const Dual<K>& x) {
+  return x.v;
+}
+template <int K>
+Dual<K> log(const Dual<K>& a) {
+  return Dual<K>::chain(a, std::log(a.v), 1.0 / a.v);
+}
+template <int K>
+Dual<K> exp(const Dual<K>& a) {
   const double e = std::exp(a.v);
   return Dual<K>::chain(a, e, e);
 }
-template <int K> Dual<K> sqrt(const Dual<K>& a) {
+template <int K>
+Dual<K> sqrt(const Dual<K>& a) {
   const double r = std::sqrt(a.v);
   return Dual<K>::chain(a, r, 0.5 / r);
 }
-template <int K> Dual<K> pow(const Dual<K>& a, double p) {
+template <int K>
+Dual<K> pow(const Dual<K>& a, double p) {
   const double r = std::pow(a.v, p);
   return Dual<K>::chain(a, r, p * r / a.v);
 }
-template <int K> Dual<K> pow(const Dual<K>& a, const Dual<K>& p) { return exp(log(a) * p); }
-template <int K> Dual<K> sin(const Dual<K>& a) { return Dual<K>::chain(a, std::sin(a.v), std::cos(a.v)); }
-template <int K> Dual<K> cos(const Dual<K>& a) { return Dual<K>::chain(a, std::cos(a.v), -std::sin(a.v)); }
-template <int K> Dual<K> tanh(const Dual<K>& a) {
+template <int K>
+Dual<K> pow(const Dual<K>& a, const Dual<K>& p) {
+  return exp(log(a) * p);
+}
+template <int K>
+Dual<K> sin(const Dual<K>& a) {
+  return Dual<K>::chain(a, std::sin(a.v), std::cos(a.v));
+}
+template <int K>
+Dual<K> cos(const Dual<K>& a) {
+  return Dual<K>::chain(a, std::cos(a.v), -std::sin(a.v));
+}
+template <int K>
+Dual<K> tanh(const Dual<K>& a) {
   const double r = std::tanh(a.v);
   return Dual<K>::chain(a, r, 1.0 - r * r);
 }

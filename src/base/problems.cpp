@@ -1,13 +1,13 @@
 #include "base/problems.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <map>
 #include <set>
 #include <string_view>
 #include <tuple>
 #include <utility>
-
-#include <fmt/format.h>
 
 namespace gaskettle {
 

@@ -1,8 +1,7 @@
 #include "cli/cli.h"
 
-#include <iostream>
-
 #include <CLI/CLI.hpp>
+#include <iostream>
 
 #include "base/version.h"
 #include "cli/commands.h"
@@ -36,13 +35,15 @@ int run_command_line(int argc, char** argv) {
   CLI::App* run_command = app.add_subcommand("run", "Simulate a model: print the answer, write the record");
   run_command->add_option("FILE", run.file, "model, or a file of configs/ that names one")->required();
   run_command->add_option("-o,--output", run.output, "record to write (the model's stem + .h5, here)");
-  run_command->add_option("--set", run.set, "PATH=VALUE, e.g. heaters.element.rating='8 kW'; repeatable")->allow_extra_args(false);
+  run_command->add_option("--set", run.set, "PATH=VALUE, e.g. heaters.element.rating='8 kW'; repeatable")
+      ->allow_extra_args(false);
   run_command->add_flag("--overwrite", run.overwrite, "replace whatever file stands at the record's place");
   run_command->add_flag("--json", run.json, "print the answer as one JSON object, SI units");
   run_command->callback([&] { status = command_run(run); });
 
   CheckArguments check;
-  CLI::App* check_command = app.add_subcommand("check", "Read and check a model only; print what the plant is in numbers");
+  CLI::App* check_command =
+      app.add_subcommand("check", "Read and check a model only; print what the plant is in numbers");
   check_command->add_option("FILE", check.file, "model, or a file of configs/")->required();
   check_command->add_option("--set", check.set, "PATH=VALUE; repeatable")->allow_extra_args(false);
   check_command->add_flag("--json", check.json, "print as one JSON object, SI units");
@@ -65,7 +66,8 @@ int run_command_line(int argc, char** argv) {
   CLI::App* gas_command = app.add_subcommand("gas", "Print every property of a gas at one state");
   gas_command->add_option("NAME", gas.name, "name or formula")->required();
   gas_command->add_option("--temperature", gas.temperature, "e.g. '20 degC'")->required();
-  CLI::Option* pressure = gas_command->add_option("--pressure", gas.pressure, "e.g. '10 bar abs'; gauge is above 101325 Pa");
+  CLI::Option* pressure =
+      gas_command->add_option("--pressure", gas.pressure, "e.g. '10 bar abs'; gauge is above 101325 Pa");
   CLI::Option* density = gas_command->add_option("--density", gas.density, "e.g. '11 kg/m3' or '400 mol/m3'");
   pressure->excludes(density);
   gas_command->add_flag("--json", gas.json, "print as one JSON object, SI units");
@@ -75,7 +77,8 @@ int run_command_line(int argc, char** argv) {
   });
 
   std::string word;
-  CLI::App* explain_command = app.add_subcommand("explain", "The reference of a key, gas, material, film, unit or quantity");
+  CLI::App* explain_command =
+      app.add_subcommand("explain", "The reference of a key, gas, material, film, unit or quantity");
   explain_command->add_option("WORD", word, "what to explain; bare, the overview");
   explain_command->callback([&] { status = command_explain(word); });
 

@@ -1,3 +1,5 @@
+#include <fmt/chrono.h>
+#include <fmt/format.h>
 #include <unistd.h>
 
 #include <atomic>
@@ -6,9 +8,6 @@
 #include <ctime>
 #include <filesystem>
 #include <iostream>
-
-#include <fmt/chrono.h>
-#include <fmt/format.h>
 
 #include "base/version.h"
 #include "cli/commands.h"
@@ -36,10 +35,17 @@ Provenance provenance(const Loaded& loaded) {
   for (const auto& [path, value] : loaded.source.overrides) overrides += path + "=" + value + "\n";
   for (const std::string& c : cautions(*loaded.plant)) cautionary += c + "\n";
   const Model& m = loaded.plant->model();
-  return {{"model_text", loaded.source.model_text}, {"config_text", loaded.source.config_text}, {"overrides", overrides},
-          {"title", m.title}, {"program_version", program_version}, {"source_revision", source_revision},
-          {"build", build_description}, {"gas_data_version", gas_data_version()}, {"rtol", fmt::format("{}", m.run.rtol)},
-          {"cautions", cautionary}, {"started", fmt::format("{:%Y-%m-%dT%H:%M:%SZ}", fmt::gmtime(std::time(nullptr)))}};
+  return {{"model_text", loaded.source.model_text},
+          {"config_text", loaded.source.config_text},
+          {"overrides", overrides},
+          {"title", m.title},
+          {"program_version", program_version},
+          {"source_revision", source_revision},
+          {"build", build_description},
+          {"gas_data_version", gas_data_version()},
+          {"rtol", fmt::format("{}", m.run.rtol)},
+          {"cautions", cautionary},
+          {"started", fmt::format("{:%Y-%m-%dT%H:%M:%SZ}", fmt::gmtime(std::time(nullptr)))}};
 }
 
 int exit_status(const CaseResult& r) {
@@ -53,7 +59,8 @@ int exit_status(const CaseResult& r) {
 class ProgressLine {
 public:
   void show(double t, double until) {
-    if (isatty(STDERR_FILENO) == 0 || std::chrono::steady_clock::now() - began_ < std::chrono::milliseconds(500)) return;
+    if (isatty(STDERR_FILENO) == 0 || std::chrono::steady_clock::now() - began_ < std::chrono::milliseconds(500))
+      return;
     std::cerr << fmt::format("\r  {:5.1f} %  {:.4g} s of {:.4g} s ", 100.0 * t / until, t, until) << std::flush;
     shown_ = true;
   }
@@ -77,7 +84,8 @@ int command_run(const RunArguments& arguments) {
   std::signal(SIGTERM, on_interrupt);
   ProgressLine line;
   CaseOptions options;
-  options.record_path = arguments.output.empty() ? std::filesystem::path(arguments.file).stem().string() + ".h5" : arguments.output;
+  options.record_path =
+      arguments.output.empty() ? std::filesystem::path(arguments.file).stem().string() + ".h5" : arguments.output;
   options.overwrite = arguments.overwrite;
   options.provenance = provenance(*loaded);
   options.identity = identity(loaded->source);
@@ -92,9 +100,12 @@ int command_run(const RunArguments& arguments) {
     return exit_refused;
   }
   line.clear();
-  AnswerContext context{loaded->plant->model().title, arguments.file, loaded->plant->layout().advice, exit_status(result)};
-  std::cout << (arguments.json ? answer_json(*loaded->plant, result, context) : answer_text(*loaded->plant, result, context));
-  if (!arguments.json) std::cout << "\nRecord: " << result.record_path << (result.partial() ? " (partial)" : "") << "\n";
+  AnswerContext context{loaded->plant->model().title, arguments.file, loaded->plant->layout().advice,
+                        exit_status(result)};
+  std::cout << (arguments.json ? answer_json(*loaded->plant, result, context)
+                               : answer_text(*loaded->plant, result, context));
+  if (!arguments.json)
+    std::cout << "\nRecord: " << result.record_path << (result.partial() ? " (partial)" : "") << "\n";
   std::cout.flush();
   return context.exit_status;
 }

@@ -1,12 +1,12 @@
 #include "cli/commands.h"
 
+#include <fmt/format.h>
+#include <fmt/ranges.h>
+
 #include <cmath>
 #include <fstream>
 #include <iostream>
 #include <sstream>
-
-#include <fmt/format.h>
-#include <fmt/ranges.h>
 
 #include "cli/loading.h"
 #include "cli/shipped_models.h"
@@ -24,7 +24,8 @@ int command_check(const CheckArguments& arguments) {
     std::cerr << loaded->problems.text();
     return exit_refused;
   }
-  std::cout << (arguments.json ? facts_json(*loaded->plant, arguments.file) : facts_text(*loaded->plant, arguments.file));
+  std::cout << (arguments.json ? facts_json(*loaded->plant, arguments.file)
+                               : facts_text(*loaded->plant, arguments.file));
   return exit_done;
 }
 
@@ -34,7 +35,8 @@ int command_new(const std::string& kind) {
     for (const ShippedModel& m : shipped_models()) {
       const std::string text(m.text);
       const std::size_t title = text.find("title:");
-      const std::string line = title == std::string::npos ? "" : text.substr(title + 7, text.find('\n', title) - title - 7);
+      const std::string line =
+          title == std::string::npos ? "" : text.substr(title + 7, text.find('\n', title) - title - 7);
       std::cout << fmt::format("  {:<18} {}\n", m.name, line);
     }
     return exit_done;
@@ -48,7 +50,8 @@ int command_new(const std::string& kind) {
     names.emplace_back(m.name);
   }
   const std::string near = nearest_name(kind, names);
-  std::cerr << fmt::format("error: there is no model '{}'{}; 'gaskettle new' lists them\n", kind, near.empty() ? "" : "; did you mean '" + near + "'?");
+  std::cerr << fmt::format("error: there is no model '{}'{}; 'gaskettle new' lists them\n", kind,
+                           near.empty() ? "" : "; did you mean '" + near + "'?");
   return exit_refused;
 }
 
@@ -102,7 +105,8 @@ int command_gas(const GasArguments& arguments) {
   const auto species = find_gas(arguments.name);
   if (!species) {
     const std::string near = nearest_name(arguments.name, gas_names());
-    std::cerr << fmt::format("error: there is no gas '{}'{}; 'gaskettle explain gases' lists them\n", arguments.name, near.empty() ? "" : "; did you mean '" + near + "'?");
+    std::cerr << fmt::format("error: there is no gas '{}'{}; 'gaskettle explain gases' lists them\n", arguments.name,
+                             near.empty() ? "" : "; did you mean '" + near + "'?");
     return exit_refused;
   }
   try {
@@ -133,7 +137,9 @@ int command_explain(const std::string& word) {
     return exit_done;
   }
   const std::string near = nearest_word(word);
-  std::cerr << fmt::format("error: nothing is known of '{}'{}\n", word, near.empty() ? "; 'gaskettle explain' gives the overview" : "; did you mean '" + near + "'?");
+  std::cerr << fmt::format(
+      "error: nothing is known of '{}'{}\n", word,
+      near.empty() ? "; 'gaskettle explain' gives the overview" : "; did you mean '" + near + "'?");
   return exit_refused;
 }
 

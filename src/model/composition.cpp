@@ -1,10 +1,10 @@
 #include "model/composition.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
 #include <map>
-
-#include <fmt/format.h>
 
 #include "gas/catalogue.h"
 
@@ -25,7 +25,8 @@ bool known_gas(ReadContext& context, const std::string& name, const Place& place
 
 Composition read_composition(Section& section, const std::string& key, const std::string& meaning,
                              const std::string& fallback) {
-  const Node* node = section.raw(key, "name of a gas, or {gas: mole fraction, ...}", meaning, fallback.empty(), fallback);
+  const Node* node =
+      section.raw(key, "name of a gas, or {gas: mole fraction, ...}", meaning, fallback.empty(), fallback);
   const Composition safe = {{fallback.empty() ? "nitrogen" : fallback, 1.0}};
   if (node == nullptr) return safe;
   ReadContext& context = section.context();
@@ -34,7 +35,8 @@ Composition read_composition(Section& section, const std::string& key, const std
     return {{node->text, 1.0}};
   }
   if (!node->is_map() || node->entries.empty()) {
-    section.error(key, fmt::format("'{}.{}' should be the name of a gas or a map of mole fractions", section.path(), key));
+    section.error(key,
+                  fmt::format("'{}.{}' should be the name of a gas or a map of mole fractions", section.path(), key));
     return safe;
   }
   Composition composition;
@@ -46,12 +48,14 @@ Composition read_composition(Section& section, const std::string& key, const std
     const auto gas = find_gas(e.key);
     const auto [first, fresh] = seen.emplace(gas ? gas->name : e.key, e.key);
     if (!fresh) {
-      context.problems.add(e.key_place, fmt::format("'{}' is the same gas as '{}'; name it once", e.key, first->second));
+      context.problems.add(e.key_place,
+                           fmt::format("'{}' is the same gas as '{}'; name it once", e.key, first->second));
       good = false;
     }
     const auto x = read_number(context, e.value, section.path() + "." + key + "." + e.key);
     if (x && (*x < 0.0 || *x > 1.0)) {
-      context.problems.add(e.value.place, fmt::format("the mole fraction of {} is {}; it must lie between 0 and 1", e.key, e.value.text));
+      context.problems.add(e.value.place, fmt::format("the mole fraction of {} is {}; it must lie between 0 and 1",
+                                                      e.key, e.value.text));
       good = false;
     }
     if (!x) good = false;
@@ -59,7 +63,8 @@ Composition read_composition(Section& section, const std::string& key, const std
     sum += x.value_or(0.0);
   }
   if (good && std::abs(sum - 1.0) > 1e-6) {
-    section.error(key, fmt::format("the mole fractions of '{}.{}' add to {:.6g}; they must add to 1", section.path(), key, sum));
+    section.error(
+        key, fmt::format("the mole fractions of '{}.{}' add to {:.6g}; they must add to 1", section.path(), key, sum));
     good = false;
   }
   if (!good || composition.empty()) return safe;

@@ -19,10 +19,10 @@ struct Node {
 
   Kind kind = Kind::missing;
   Place place;
-  std::string text;             ///< of a scalar
-  bool quoted = false;          ///< the scalar stood in quotes
-  std::vector<Node> items;      ///< of a list
-  std::vector<Entry> entries;   ///< of a map, in the order of the file; keys are unique
+  std::string text;            ///< of a scalar
+  bool quoted = false;         ///< the scalar stood in quotes
+  std::vector<Node> items;     ///< of a list
+  std::vector<Entry> entries;  ///< of a map, in the order of the file; keys are unique
 
   bool is_map() const { return kind == Kind::map; }
   bool is_list() const { return kind == Kind::list; }

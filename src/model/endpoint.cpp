@@ -50,8 +50,10 @@ Endpoint Endpoint::at_space(Reference reference, bool or_atmosphere) {
 
 void Endpoint::declare(Layout& layout) {
   if (kind_ == Kind::space) {
-    if (const SpaceInfo* space = layout.space(reference_, or_atmosphere_)) space_ = space->index;
-    else space_ = 0;
+    if (const SpaceInfo* space = layout.space(reference_, or_atmosphere_))
+      space_ = space->index;
+    else
+      space_ = 0;
     return;
   }
   if (kind_ == Kind::atmosphere) composition_ = layout.surroundings_gas;
@@ -62,8 +64,10 @@ void Endpoint::connect(Layout& layout, const std::string& part, const std::strin
   if (kind_ == Kind::space) return;
   fraction_ = layout.mass_fractions(composition_);
   if (kind_ != Kind::supply) return;
-  pressure_input_ = layout.add_input(part + "." + which + ".supply.pressure", unit_kinds::pressure, pressure_spec_, layout.atmosphere_pressure, {});
-  temperature_input_ = layout.add_input(part + "." + which + ".supply.temperature", unit_kinds::temperature, temperature_spec_, layout.ambient_temperature_start, {});
+  pressure_input_ = layout.add_input(part + "." + which + ".supply.pressure", unit_kinds::pressure, pressure_spec_,
+                                     layout.atmosphere_pressure, {});
+  temperature_input_ = layout.add_input(part + "." + which + ".supply.temperature", unit_kinds::temperature,
+                                        temperature_spec_, layout.ambient_temperature_start, {});
 }
 
 void FlowEntries::connect(Layout& layout, const std::string& part, const Endpoint& from, const Endpoint& to) {

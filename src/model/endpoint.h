@@ -22,18 +22,21 @@ public:
   const std::string& space_name() const { return reference_.name; }
 
   /// The state of the gas that would flow out of this end.
-  template <class S> GasState<S> state(const Workspace<S>& w) const {
+  template <class S>
+  GasState<S> state(const Workspace<S>& w) const {
     if (kind_ == Kind::space) return w.gas[space_];
     S fraction[GasMixture::max_species];
     for (int k = 0; k < w.species_count; ++k) fraction[k] = S(fraction_[k]);
     return w.layout->mixture.from_temperature(fraction, temperature(w), pressure(w));
   }
-  template <class S> S pressure(const Workspace<S>& w) const {
+  template <class S>
+  S pressure(const Workspace<S>& w) const {
     if (kind_ == Kind::space) return w.gas[space_].pressure;
     return kind_ == Kind::supply ? w.input[pressure_input_] : S(w.layout->atmosphere_pressure);
   }
   /// Mass fraction of a species in what would flow out of this end.
-  template <class S> S fraction(const Workspace<S>& w, int k) const {
+  template <class S>
+  S fraction(const Workspace<S>& w, int k) const {
     if (kind_ != Kind::space) return S(fraction_[k]);
     return w.space_mass(space_)[k] / w.total_mass(space_);
   }
@@ -41,7 +44,8 @@ public:
 private:
   enum class Kind { space, atmosphere, supply };
   void read_supply(Section& supply);
-  template <class S> S temperature(const Workspace<S>& w) const {
+  template <class S>
+  S temperature(const Workspace<S>& w) const {
     return kind_ == Kind::supply ? w.input[temperature_input_] : w.ambient_temperature;
   }
   Kind kind_ = Kind::atmosphere;
@@ -60,7 +64,8 @@ struct FlowEntries {
 };
 
 /// Ideal-mixing entropy of a stream, J/kg/K: -sum(R_k y_k ln x_k).
-template <class S> S mixing_entropy_of(const Workspace<S>& w, const Endpoint& end) {
+template <class S>
+S mixing_entropy_of(const Workspace<S>& w, const Endpoint& end) {
   S moles = S(0.0), fraction[GasMixture::max_species];
   for (int k = 0; k < w.species_count; ++k) {
     fraction[k] = end.fraction(w, k) / w.layout->mixture.species(k).molar_mass;
@@ -78,7 +83,8 @@ template <class S> S mixing_entropy_of(const Workspace<S>& w, const Endpoint& en
 ///   (h_in - h(T))/T + s(T) - s(T_in)  at one pressure and composition.
 /// The mixing of species is audited as a difference of states (see Plant).
 template <class S>
-void carry_flow(Workspace<S>& w, const S& flow, const Endpoint& from, const Endpoint& to, const GasState<S>& up, const FlowEntries& entries) {
+void carry_flow(Workspace<S>& w, const S& flow, const Endpoint& from, const Endpoint& to, const GasState<S>& up,
+                const FlowEntries& entries) {
   const Layout& layout = *w.layout;
   const S enthalpy = flow * up.enthalpy;
   S fraction[GasMixture::max_species];
@@ -98,7 +104,8 @@ void carry_flow(Workspace<S>& w, const S& flow, const Endpoint& from, const Endp
   } else {
     w.book(entries.enthalpy_in, enthalpy);
     w.carry_entropy(flow * up.entropy);
-    for (int k = 0; k < w.species_count; ++k) w.f[layout.mass_in_state[k]] = w.f[layout.mass_in_state[k]] + flow * fraction[k];
+    for (int k = 0; k < w.species_count; ++k)
+      w.f[layout.mass_in_state[k]] = w.f[layout.mass_in_state[k]] + flow * fraction[k];
   }
   if (to.is_space()) {
     const int store = layout.spaces[to.space()].store;
@@ -114,7 +121,8 @@ void carry_flow(Workspace<S>& w, const S& flow, const Endpoint& from, const Endp
   } else {
     w.book(entries.enthalpy_out, enthalpy);
     w.carry_entropy(-flow * (up.entropy + throttled));
-    for (int k = 0; k < w.species_count; ++k) w.f[layout.mass_out_state[k]] = w.f[layout.mass_out_state[k]] + flow * fraction[k];
+    for (int k = 0; k < w.species_count; ++k)
+      w.f[layout.mass_out_state[k]] = w.f[layout.mass_out_state[k]] + flow * fraction[k];
   }
 }
 

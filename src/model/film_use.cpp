@@ -1,9 +1,9 @@
 #include "model/film_use.h"
 
-#include <cmath>
-
 #include <fmt/format.h>
 #include <fmt/ranges.h>
+
+#include <cmath>
 
 namespace gaskettle {
 
@@ -26,10 +26,18 @@ void FilmUse::read(Section& s, bool inside) {
         return;
       }
       switch (entry->kind) {
-        case FilmKind::still_air: kind_ = Kind::still_air; break;
-        case FilmKind::wind: kind_ = Kind::wind; break;
-        case FilmKind::enclosed: kind_ = Kind::enclosed; break;
-        case FilmKind::stirred: kind_ = Kind::stirred; break;
+        case FilmKind::still_air:
+          kind_ = Kind::still_air;
+          break;
+        case FilmKind::wind:
+          kind_ = Kind::wind;
+          break;
+        case FilmKind::enclosed:
+          kind_ = Kind::enclosed;
+          break;
+        case FilmKind::stirred:
+          kind_ = Kind::stirred;
+          break;
       }
       return;
     }
@@ -41,18 +49,22 @@ void FilmUse::read(Section& s, bool inside) {
       return;
     }
   }
-  if (const auto v = read_value(s.context(), *node, s.path() + ".film", unit_kinds::film_coefficient, Range::not_negative)) {
+  if (const auto v =
+          read_value(s.context(), *node, s.path() + ".film", unit_kinds::film_coefficient, Range::not_negative)) {
     kind_ = Kind::given;
     given_ = *v;
   }
 }
 
-void FilmUse::connect(Layout& layout, const SpaceInfo& space, double area, double wall_thickness, const Place& wall_place) {
+void FilmUse::connect(Layout& layout, const SpaceInfo& space, double area, double wall_thickness,
+                      const Place& wall_place) {
   const Place& place = place_.file ? place_ : wall_place;
   if (kind_ == Kind::given || kind_ == Kind::none) return;
   const bool transport = inside_ ? layout.mixture.has_transport() : layout.outside_air.has_transport();
   if (!transport)
-    layout.error(place, "a film by correlation needs viscosity and conductivity of every gas; state them in `gases`, or give the film a value");
+    layout.error(place,
+                 "a film by correlation needs viscosity and conductivity of every gas; state them in `gases`, or give "
+                 "the film a value");
   const Shape& shape = space.shape;
   const double outward = inside_ ? 0.0 : 2.0 * wall_thickness;
   const double bore = shape.bore + outward;
@@ -88,7 +100,8 @@ void FilmUse::connect(Layout& layout, const SpaceInfo& space, double area, doubl
   // A stirrer with a mistake may be the one.
   if (speed_input_ < 0 && !layout.any_unsound("stirrer"))
     layout.error(place, fmt::format("the film 'stirred' needs a stirrer with 'diameter' and 'speed' in '{}'; use "
-                                    "'enclosed', or give the film a value", space.name));
+                                    "'enclosed', or give the film a value",
+                                    space.name));
 }
 
 }  // namespace gaskettle

@@ -8,7 +8,8 @@
 namespace gaskettle {
 
 /// Properties of the gas of a space at the mean of gas and wall temperature.
-template <class S> FilmFluid<S> film_fluid(const Workspace<S>& w, int space, const S& film_temperature) {
+template <class S>
+FilmFluid<S> film_fluid(const Workspace<S>& w, int space, const S& film_temperature) {
   const GasMixture& mixture = w.layout->mixture;
   const S* mass = w.space_mass(space);
   const GasState<S> state = mixture.from_temperature(mass, film_temperature, w.gas[space].pressure);
@@ -17,7 +18,8 @@ template <class S> FilmFluid<S> film_fluid(const Workspace<S>& w, int space, con
 }
 
 /// Properties of the surroundings' gas at a temperature.
-template <class S> FilmFluid<S> outside_fluid(const Workspace<S>& w, const S& film_temperature) {
+template <class S>
+FilmFluid<S> outside_fluid(const Workspace<S>& w, const S& film_temperature) {
   const GasMixture& air = w.layout->outside_air;
   S mass[GasMixture::max_species];
   for (int k = 0; k < air.count(); ++k) mass[k] = S(w.layout->outside_air_fractions[k]);
@@ -35,10 +37,13 @@ public:
   bool is_none() const { return kind_ == Kind::none; }
   const std::string& name() const { return name_; }
   /// A typical coefficient, W/m2/K, for choosing the conduction nodes.
-  double typical() const { return kind_ == Kind::given ? given_ : (kind_ == Kind::none ? 0.0 : (inside_ ? 50.0 : 10.0)); }
+  double typical() const {
+    return kind_ == Kind::given ? given_ : (kind_ == Kind::none ? 0.0 : (inside_ ? 50.0 : 10.0));
+  }
 
   /// W/m2/K between the gas of a space and a face.
-  template <class S> S inside_coefficient(const Workspace<S>& w, int space, const S& face) const {
+  template <class S>
+  S inside_coefficient(const Workspace<S>& w, int space, const S& face) const {
     if (kind_ == Kind::given || kind_ == Kind::none) return S(given_);
     const S& gas = w.gas[space].temperature;
     const FilmFluid<S> fluid = film_fluid(w, space, S(0.5 * (gas + face)));
@@ -54,7 +59,8 @@ public:
   }
 
   /// W/m2/K between an outer face and what it sees.
-  template <class S> S outside_coefficient(const Workspace<S>& w, const S& face, const S& there) const {
+  template <class S>
+  S outside_coefficient(const Workspace<S>& w, const S& face, const S& there) const {
     if (kind_ == Kind::given || kind_ == Kind::none) return S(given_);
     const FilmFluid<S> fluid = outside_fluid(w, S(0.5 * (face + there)));
     if (kind_ == Kind::wind) return wind_film(faces_, fluid, w.wind, face, there, w.layout->gravity);
@@ -62,10 +68,12 @@ public:
   }
 
   /// Heat between the gas of a space and a face of the area given.
-  template <class S> void exchange(Workspace<S>& w, int space, int store, const S& area) const {
+  template <class S>
+  void exchange(Workspace<S>& w, int space, int store, const S& area) const {
     if (kind_ == Kind::none) return;
     const S difference = w.gas[space].temperature - w.temperature[store];
-    w.heat(w.layout->spaces[space].store, store, inside_coefficient(w, space, w.temperature[store]) * area * difference, Mechanism::film);
+    w.heat(w.layout->spaces[space].store, store, inside_coefficient(w, space, w.temperature[store]) * area * difference,
+           Mechanism::film);
   }
 
 private:

@@ -1,11 +1,11 @@
 #include "model/layout.h"
 
+#include <fmt/format.h>
+#include <fmt/ranges.h>
+
 #include <algorithm>
 #include <array>
 #include <string_view>
-
-#include <fmt/format.h>
-#include <fmt/ranges.h>
 
 #include "gas/catalogue.h"
 
@@ -30,7 +30,8 @@ int Layout::add_gas_store(int space_index, double typical_energy) {
   return static_cast<int>(stores.size()) - 1;
 }
 
-int Layout::add_input(const std::string& path, const UnitKind& kind, const SignalSpec& spec, double start, Place place) {
+int Layout::add_input(const std::string& path, const UnitKind& kind, const SignalSpec& spec, double start,
+                      Place place) {
   InputInfo info;
   info.path = path;
   info.kind = kind;
@@ -65,14 +66,35 @@ std::string suggestion(const std::string& wrong, const std::vector<std::string>&
   if (known.empty()) return "; there is none";
   constexpr std::size_t most = 20;
   if (known.size() <= most) return fmt::format("; there are: {}", fmt::join(known, ", "));
-  return fmt::format("; there are: {} and {} more", fmt::join(known.begin(), known.begin() + most, ", "), known.size() - most);
+  return fmt::format("; there are: {} and {} more", fmt::join(known.begin(), known.begin() + most, ", "),
+                     known.size() - most);
 }
 
 /// Names of channels and of inputs, after the name of their part.
-constexpr std::array<std::string_view, 24> quantities = {
-    "temperature", "outer_temperature", "core_temperature", "pressure", "volume", "mass", "energy", "specific_entropy",
-    "density", "mole_fraction", "position", "velocity", "loss", "profile", "power", "torque", "speed", "flow", "opening",
-    "released", "reading", "output", "setpoint", "force"};
+constexpr std::array<std::string_view, 24> quantities = {"temperature",
+                                                         "outer_temperature",
+                                                         "core_temperature",
+                                                         "pressure",
+                                                         "volume",
+                                                         "mass",
+                                                         "energy",
+                                                         "specific_entropy",
+                                                         "density",
+                                                         "mole_fraction",
+                                                         "position",
+                                                         "velocity",
+                                                         "loss",
+                                                         "profile",
+                                                         "power",
+                                                         "torque",
+                                                         "speed",
+                                                         "flow",
+                                                         "opening",
+                                                         "released",
+                                                         "reading",
+                                                         "output",
+                                                         "setpoint",
+                                                         "force"};
 }  // namespace
 
 bool Layout::any_unsound(const std::string& kind) const {
@@ -101,7 +123,8 @@ SpaceInfo* Layout::space(const Reference& reference, bool or_atmosphere) {
   }
   if (excuse(reference.name)) return nullptr;
   if (or_atmosphere) names.emplace_back("atmosphere");
-  error(reference.place, fmt::format("there is no gas space '{}'{}", reference.name, suggestion(reference.name, names, problems_->count())));
+  error(reference.place, fmt::format("there is no gas space '{}'{}", reference.name,
+                                     suggestion(reference.name, names, problems_->count())));
   return nullptr;
 }
 
@@ -119,7 +142,8 @@ int Layout::channel(const Reference& reference) {
   std::vector<std::string> own;
   for (const std::string& n : names)
     if (n.rfind(part + ".", 0) == 0) own.push_back(n);
-  error(reference.place, fmt::format("there is no channel '{}'{}", reference.name, suggestion(reference.name, own.empty() ? names : own, problems_->count())));
+  error(reference.place, fmt::format("there is no channel '{}'{}", reference.name,
+                                     suggestion(reference.name, own.empty() ? names : own, problems_->count())));
   return -1;
 }
 
@@ -131,7 +155,8 @@ int Layout::input(const Reference& reference) {
     names.push_back(inputs[i].path);
   }
   if (excuse(reference.name)) return -1;
-  error(reference.place, fmt::format("a controller cannot drive '{}'{}", reference.name, suggestion(reference.name, names, problems_->count())));
+  error(reference.place, fmt::format("a controller cannot drive '{}'{}", reference.name,
+                                     suggestion(reference.name, names, problems_->count())));
   return -1;
 }
 
@@ -166,7 +191,8 @@ void Layout::close_gases() {
     }
   }
   if (list.size() > static_cast<std::size_t>(GasMixture::max_species)) {
-    error(gas_names_[GasMixture::max_species].second, fmt::format("the model uses {} gases; at most {} can be in one plant", list.size(), GasMixture::max_species));
+    error(gas_names_[GasMixture::max_species].second,
+          fmt::format("the model uses {} gases; at most {} can be in one plant", list.size(), GasMixture::max_species));
     list.resize(GasMixture::max_species);
   }
   if (list.empty()) list.push_back(*find_gas("nitrogen"));

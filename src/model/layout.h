@@ -35,10 +35,10 @@ struct StateInfo {
 /// Anything that holds energy at a temperature: the gas of a space, a wall node, a body, an element.
 struct StoreInfo {
   std::string name;
-  int state = -1;             ///< energy departure, J
-  double capacity = 0.0;      ///< J/K; 0 for gas, whose temperature follows from its energy
-  double temperature = 0.0;   ///< K at the start
-  int space = -1;             ///< the gas space, for gas
+  int state = -1;            ///< energy departure, J
+  double capacity = 0.0;     ///< J/K; 0 for gas, whose temperature follows from its energy
+  double temperature = 0.0;  ///< K at the start
+  int space = -1;            ///< the gas space, for gas
 };
 
 struct SpaceInfo {
@@ -47,11 +47,11 @@ struct SpaceInfo {
   int index = -1;
   int store = -1;
   Shape shape;
-  double count = 1.0;         ///< so many alike
-  double volume = 0.0;        ///< m3 at the start, all of them
-  double temperature = 0.0;   ///< K at the start
-  std::optional<double> pressure;  ///< Pa absolute at the start, once known
-  Place pressure_place;            ///< where it is stated
+  double count = 1.0;                ///< so many alike
+  double volume = 0.0;               ///< m3 at the start, all of them
+  double temperature = 0.0;          ///< K at the start
+  std::optional<double> pressure;    ///< Pa absolute at the start, once known
+  Place pressure_place;              ///< where it is stated
   std::optional<double> given_mass;  ///< kg of all of them
   Composition composition;
   std::vector<bool> carries;      ///< which species can ever be in here
@@ -71,7 +71,7 @@ struct FaceInfo {
   double area = 0.0;        ///< m2
   double emissivity = 0.0;  ///< 0: does not radiate
   bool wall = false;
-  int core_store = -1;      ///< innermost node of a body
+  int core_store = -1;  ///< innermost node of a body
 };
 
 /// A time-varying input: from the model or from a controller.
@@ -79,8 +79,8 @@ struct InputInfo {
   std::string path;  ///< "element.power"
   UnitKind kind;
   Signal signal;
-  int driver = -1;           ///< output slot of the controller that drives it
-  bool given = true;         ///< the model states it
+  int driver = -1;               ///< output slot of the controller that drives it
+  bool given = true;             ///< the model states it
   double low = 0.0, high = 0.0;  ///< what a controller may ask for
   Place place;
 };
@@ -123,10 +123,10 @@ struct ReliefInfo {
   std::string name;
   int space = -1;
   int flow_channel = -1, opening_channel = -1, released_channel = -1;
-  double set_pressure = 0.0;   ///< Pa absolute at the inlet
+  double set_pressure = 0.0;  ///< Pa absolute at the inlet
   double area = 0.0, discharge_coefficient = 0.0;
   bool disc = false;
-  int outlet_space = -1;       ///< -1: the atmosphere
+  int outlet_space = -1;  ///< -1: the atmosphere
 };
 
 /// A figure that `check` prints of a part.
@@ -207,10 +207,10 @@ public:
     int state;
   };
   std::vector<LedgerEntry> ledger_entries;
-  std::vector<int> entropy_state;              ///< per mechanism
-  int entropy_transfer_state = -1;             ///< net entropy carried in across the plant's boundary
-  int mixing_carried_state = -1;               ///< net ideal-mixing entropy carried into spaces
-  int throughput_state = -1;                   ///< integral of the sum of |ledger rates|
+  std::vector<int> entropy_state;                  ///< per mechanism
+  int entropy_transfer_state = -1;                 ///< net entropy carried in across the plant's boundary
+  int mixing_carried_state = -1;                   ///< net ideal-mixing entropy carried into spaces
+  int throughput_state = -1;                       ///< integral of the sum of |ledger rates|
   std::vector<int> mass_in_state, mass_out_state;  ///< per species
   std::vector<std::string> warnings, advice;
   std::vector<Fact> facts;
@@ -220,14 +220,14 @@ private:
   std::size_t excused_ = 0;
 
 public:
-  double atmosphere_pressure;           ///< Pa
-  double gravity = 9.80665;             ///< m/s2
+  double atmosphere_pressure;  ///< Pa
+  double gravity = 9.80665;    ///< m/s2
   int ambient_temperature_input = -1, wind_input = -1;
   double ambient_temperature_start = 293.15;
-  double run_length = 0.0;              ///< s
+  double run_length = 0.0;  ///< s
   double rtol = 1e-8;
   bool discharges_to_atmosphere = false;
-  std::size_t scratch_size = 0;          ///< of a workspace
+  std::size_t scratch_size = 0;  ///< of a workspace
 
 private:
   struct Flow {

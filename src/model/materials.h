@@ -11,10 +11,10 @@ namespace gaskettle {
 
 struct Material {
   std::string name;
-  double density = 0.0;        ///< kg/m3
-  double specific_heat = 0.0;  ///< J/kg/K
+  double density = 0.0;                                 ///< kg/m3
+  double specific_heat = 0.0;                           ///< J/kg/K
   std::vector<std::pair<double, double>> conductivity;  ///< (K, W/m/K); one point: constant
-  double emissivity = 0.0;     ///< 0: not stated
+  double emissivity = 0.0;                              ///< 0: not stated
   std::string source;
 };
 
@@ -22,7 +22,8 @@ struct Material {
 const std::vector<Material>& material_catalogue();
 
 /// Reads a material key: a name (built in or the model's own), or a map of properties.
-std::optional<Material> read_material(Section& section, const std::string& key, const std::string& meaning, bool required);
+std::optional<Material> read_material(Section& section, const std::string& key, const std::string& meaning,
+                                      bool required);
 /// Reads the properties of one material from its map.
 Material read_material_map(Section& section, const std::string& name);
 

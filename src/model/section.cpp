@@ -1,12 +1,12 @@
 #include "model/section.h"
 
-#include "model/materials.h"
+#include <fmt/format.h>
+#include <fmt/ranges.h>
 
 #include <algorithm>
 #include <cmath>
 
-#include <fmt/format.h>
-#include <fmt/ranges.h>
+#include "model/materials.h"
 
 namespace gaskettle {
 
@@ -14,9 +14,7 @@ ReadContext::ReadContext(Problems& p) : problems(p) {}
 ReadContext::~ReadContext() = default;
 
 namespace {
-std::string join_path(const std::string& path, const std::string& key) {
-  return path.empty() ? key : path + "." + key;
-}
+std::string join_path(const std::string& path, const std::string& key) { return path.empty() ? key : path + "." + key; }
 
 std::string shown(const Node& node) {
   if (node.is_scalar()) return "'" + (node.text.size() > 60 ? node.text.substr(0, 60) + "..." : node.text) + "'";
@@ -38,7 +36,8 @@ std::string range_fault(double si, Range range, const UnitKind& kind) {
     case Range::fraction:
       if (!(si >= 0.0 && si <= 1.0)) return "must lie between 0 and 1";
       break;
-    case Range::any: break;
+    case Range::any:
+      break;
   }
   return "";
 }
@@ -47,9 +46,9 @@ std::string range_fault(double si, Range range, const UnitKind& kind) {
 std::optional<Value> read_value(ReadContext& context, const Node& node, const std::string& path, const UnitKind& kind,
                                 Range range, FlowBasis* basis) {
   if (!node.is_scalar()) {
-    context.problems.add(node.place, fmt::format("'{}' should be a {} such as '{}', not {}", path, kind.name,
-                                                 example_units(kind).empty() ? "1" : "1 " + example_units(kind).front(),
-                                                 shown(node)));
+    context.problems.add(
+        node.place, fmt::format("'{}' should be a {} such as '{}', not {}", path, kind.name,
+                                example_units(kind).empty() ? "1" : "1 " + example_units(kind).front(), shown(node)));
     return std::nullopt;
   }
   try {
@@ -92,8 +91,12 @@ Section::Section(ReadContext& context, const Node* node, std::string path)
 Section::Section(ReadContext& context, std::string path) : context_(&context), path_(std::move(path)) {}
 
 Section::Section(Section&& other) noexcept
-    : context_(other.context_), node_(other.node_), place_(std::move(other.place_)), path_(std::move(other.path_)),
-      known_(std::move(other.known_)), owner_(std::exchange(other.owner_, false)) {}
+    : context_(other.context_),
+      node_(other.node_),
+      place_(std::move(other.place_)),
+      path_(std::move(other.path_)),
+      known_(std::move(other.known_)),
+      owner_(std::exchange(other.owner_, false)) {}
 
 Section::~Section() {
   if (!owner_ || node_ == nullptr) return;
@@ -117,7 +120,8 @@ const Node* Section::take(const std::string& key) {
   known_.insert(key);
   const Node* n = node_ == nullptr ? nullptr : node_->find(key);
   if (n != nullptr && n->kind == Node::Kind::null) {
-    context_->problems.add(n->place, fmt::format("'{}' has no value; give it one, or take the key out", join_path(path_, key)));
+    context_->problems.add(n->place,
+                           fmt::format("'{}' has no value; give it one, or take the key out", join_path(path_, key)));
     return nullptr;
   }
   return n;
@@ -133,8 +137,9 @@ void Section::document(const std::string& key, const std::string& type, const Un
 
 void Section::missing(const std::string& key, const std::string& example) {
   if (node_ == nullptr) return;
-  context_->problems.add(place_, fmt::format("'{}' is missing in {}{}", key, path_.empty() ? "the model" : "'" + path_ + "'",
-                                             example.empty() ? "" : "; write for example '" + key + ": " + example + "'"));
+  context_->problems.add(place_,
+                         fmt::format("'{}' is missing in {}{}", key, path_.empty() ? "the model" : "'" + path_ + "'",
+                                     example.empty() ? "" : "; write for example '" + key + ": " + example + "'"));
 }
 
 Value Section::quantity(const std::string& key, const UnitKind& kind, const std::string& meaning, Range range) {
@@ -186,8 +191,8 @@ std::string Section::required_choice(const std::string& key, const std::vector<s
   return chosen.empty() ? options.front() : chosen;
 }
 
-std::string Section::choice(const std::string& key, const std::vector<std::string>& options,
-                            const std::string& meaning, const std::string& fallback) {
+std::string Section::choice(const std::string& key, const std::vector<std::string>& options, const std::string& meaning,
+                            const std::string& fallback) {
   document(key, fmt::format("one of {}", fmt::join(options, ", ")), nullptr, fallback, meaning, false);
   const Node* n = take(key);
   if (n == nullptr) {
@@ -218,7 +223,8 @@ long Section::integer(const std::string& key, const std::string& meaning, long l
   const std::optional<double> x = read_number(*context_, *n, join_path(path_, key));
   if (!x) return fallback;
   if (*x != std::floor(*x) || *x < static_cast<double>(least) || *x > 1e6) {
-    error(key, fmt::format("'{}' is {}; it should be a whole number from {} to 1000000", join_path(path_, key), n->text, least));
+    error(key, fmt::format("'{}' is {}; it should be a whole number from {} to 1000000", join_path(path_, key), n->text,
+                           least));
     return fallback;
   }
   return static_cast<long>(*x);

@@ -24,7 +24,7 @@ enum class Range { any, positive, not_negative, fraction /* 0 to 1 */ };
 /// A number in SI with how it was written.
 struct Value {
   double si = 0.0;
-  std::string unit;    ///< as the user wrote it, for printing back
+  std::string unit;  ///< as the user wrote it, for printing back
   Place place;
   bool given = false;  ///< false: a default
   bool gauge = false;  ///< was written as gauge; `si` is absolute

@@ -54,7 +54,8 @@ private:
         spec_.repeats = -1;
       } else if (const auto x = read_number(context_, *n, path_ + ".repeat")) {
         if (*x < 1.0 || *x != static_cast<double>(static_cast<long>(*x)))
-          context_.problems.add(n->place, fmt::format("'{}.repeat' should be a whole number from 1, or 'forever'", path_));
+          context_.problems.add(n->place,
+                                fmt::format("'{}.repeat' should be a whole number from 1, or 'forever'", path_));
         spec_.repeats = static_cast<long>(*x);
       }
     }
@@ -118,7 +119,8 @@ private:
 };
 }  // namespace
 
-SignalSpec read_signal(ReadContext& context, const Node& node, const std::string& path, const UnitKind& kind, Range range) {
+SignalSpec read_signal(ReadContext& context, const Node& node, const std::string& path, const UnitKind& kind,
+                       Range range) {
   return SignalReader(context, kind, range, path).read(node);
 }
 
@@ -157,7 +159,9 @@ SignalSpec Section::flow_signal(const std::string& key, const std::string& meani
   SignalSpec spec = reader.read(*n);
   basis = reader.basis();
   if (reader.mixed_bases())
-    error(key, fmt::format("all values of '{}' must be of one kind: mass, molar (or normal, anr), or actual volume flow", path));
+    error(key,
+          fmt::format("all values of '{}' must be of one kind: mass, molar (or normal, anr), or actual volume flow",
+                      path));
   return spec;
 }
 

@@ -12,9 +12,12 @@ double Shape::cross_section() const { return pi / 4.0 * bore * bore; }
 double Shape::end_area() const {
   if (kind != Kind::cylinder) return 0.0;
   switch (ends) {
-    case Ends::flat: return cross_section();
-    case Ends::hemispherical: return pi / 2.0 * bore * bore;
-    case Ends::ellipsoidal: break;
+    case Ends::flat:
+      return cross_section();
+    case Ends::hemispherical:
+      return pi / 2.0 * bore * bore;
+    case Ends::ellipsoidal:
+      break;
   }
   // Half of an oblate spheroid with axes D, D, D/2 (2:1 head): A = pi a^2 (1 + (1 - e^2)/e atanh e), halved,
   // with a = D/2 and e^2 = 3/4; geometry, e.g. Bronstein, Taschenbuch der Mathematik, solids of revolution.
@@ -34,9 +37,12 @@ double Shape::volume() const {
   if (kind == Kind::unknown) return 0.0;
   const double cylinder = cross_section() * length;
   switch (ends) {
-    case Ends::flat: return cylinder;
-    case Ends::hemispherical: return cylinder + pi / 6.0 * bore * bore * bore;
-    case Ends::ellipsoidal: return cylinder + pi / 12.0 * bore * bore * bore;
+    case Ends::flat:
+      return cylinder;
+    case Ends::hemispherical:
+      return cylinder + pi / 6.0 * bore * bore * bore;
+    case Ends::ellipsoidal:
+      return cylinder + pi / 12.0 * bore * bore * bore;
   }
   return cylinder;
 }
@@ -47,10 +53,11 @@ Shape read_shape(Section& section) {
   if (auto cylinder = section.child("cylinder", "a cylinder with two alike ends")) {
     shape.kind = Shape::Kind::cylinder;
     shape.bore = cylinder->quantity("bore", unit_kinds::length, "inner diameter", Range::positive);
-    shape.length = cylinder->quantity("length", unit_kinds::length,
-                                      "of the cylindrical part; with a piston, of the gas at the start", Range::positive);
-    const std::string ends =
-        cylinder->choice("ends", {"flat", "hemispherical", "ellipsoidal"}, "shape of the two ends (ellipsoidal: 2:1)", "flat");
+    shape.length =
+        cylinder->quantity("length", unit_kinds::length,
+                           "of the cylindrical part; with a piston, of the gas at the start", Range::positive);
+    const std::string ends = cylinder->choice("ends", {"flat", "hemispherical", "ellipsoidal"},
+                                              "shape of the two ends (ellipsoidal: 2:1)", "flat");
     shape.ends = ends == "flat" ? Shape::Ends::flat
                                 : (ends == "hemispherical" ? Shape::Ends::hemispherical : Shape::Ends::ellipsoidal);
     shape.upright = cylinder->choice("axis", {"upright", "level"}, "direction of the axis", "upright") == "upright";

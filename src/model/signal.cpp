@@ -95,10 +95,14 @@ std::pair<double, double> Signal::range() const {
 
 Signal SignalSpec::make(double start) const {
   switch (kind) {
-    case Kind::schedule: return Signal::schedule(points, held, repeats);
-    case Kind::ramp: return Signal::ramp(has_ramp_from ? ramp_from : start, ramp_to, ramp_rate);
-    case Kind::sine: return Signal::sine(level, amplitude, frequency);
-    case Kind::constant: break;
+    case Kind::schedule:
+      return Signal::schedule(points, held, repeats);
+    case Kind::ramp:
+      return Signal::ramp(has_ramp_from ? ramp_from : start, ramp_to, ramp_rate);
+    case Kind::sine:
+      return Signal::sine(level, amplitude, frequency);
+    case Kind::constant:
+      break;
   }
   return Signal::constant(level);
 }

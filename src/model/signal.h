@@ -25,13 +25,15 @@ public:
   static Signal sine(double mean, double amplitude, double frequency_hz);
 
   /// Value at time t on the active segment.
-  template <Scalar S> S at(const S& t) const {
+  template <Scalar S>
+  S at(const S& t) const {
     using std::sin;
     if (sine_) return mean_ + amplitude_ * sin(omega_ * t);
     return level_ + slope_ * (t - start_);
   }
   /// Rate of change at t, per second.
-  template <Scalar S> S slope(const S& t) const {
+  template <Scalar S>
+  S slope(const S& t) const {
     using std::cos;
     if (sine_) return amplitude_ * omega_ * cos(omega_ * t);
     return S(slope_);

@@ -10,15 +10,27 @@ namespace gaskettle {
 ///     = enthalpy_out + wall_loss + boundary_work + stored
 /// with boundary_work the sum of the terms from `lifting` on: work done BY the gas.
 enum class LedgerTerm {
-  heater, shaft, flux, enthalpy_in, returned,  // supplied
-  enthalpy_out, wall_loss,                     // carried away
-  lifting, spring, atmosphere, back, applied, friction, kinetic, impact  // boundary work
+  heater,
+  shaft,
+  flux,
+  enthalpy_in,
+  returned,  // supplied
+  enthalpy_out,
+  wall_loss,  // carried away
+  lifting,
+  spring,
+  atmosphere,
+  back,
+  applied,
+  friction,
+  kinetic,
+  impact  // boundary work
 };
 inline constexpr int ledger_term_count = 15;
 inline constexpr int first_work_term = static_cast<int>(LedgerTerm::lifting);
 inline constexpr std::array<const char*, ledger_term_count> ledger_names = {
-    "heater", "shaft", "flux", "enthalpy_in", "returned", "enthalpy_out", "wall_loss", "lifting",
-    "spring", "atmosphere", "back", "applied", "friction", "kinetic", "impact"};
+    "heater", "shaft",      "flux", "enthalpy_in", "returned", "enthalpy_out", "wall_loss", "lifting",
+    "spring", "atmosphere", "back", "applied",     "friction", "kinetic",      "impact"};
 inline constexpr std::array<const char*, ledger_term_count> ledger_meanings = {
     "electrical energy of heaters (negative: taken out by coolers)",
     "shaft work of stirrers",
@@ -37,15 +49,28 @@ inline constexpr std::array<const char*, ledger_term_count> ledger_meanings = {
     "kinetic energy lost at stops and in arriving loads"};
 
 /// +1 for terms on the supply side, -1 for the others.
-inline int ledger_sign(LedgerTerm term) { return static_cast<int>(term) <= static_cast<int>(LedgerTerm::returned) ? 1 : -1; }
+inline int ledger_sign(LedgerTerm term) {
+  return static_cast<int>(term) <= static_cast<int>(LedgerTerm::returned) ? 1 : -1;
+}
 
 /// What generates entropy.
 enum class Mechanism {
-  film, conduction, radiation, heater, stirrer, flux, friction, impact, sudden, throttling, mixing
+  film,
+  conduction,
+  radiation,
+  heater,
+  stirrer,
+  flux,
+  friction,
+  impact,
+  sudden,
+  throttling,
+  mixing
 };
 inline constexpr int mechanism_count = 11;
 inline constexpr std::array<const char*, mechanism_count> mechanism_names = {
-    "film", "conduction", "radiation", "heater", "stirrer", "flux", "friction", "impact", "sudden", "throttling", "mixing"};
+    "film",     "conduction", "radiation", "heater",     "stirrer", "flux",
+    "friction", "impact",     "sudden",    "throttling", "mixing"};
 inline constexpr std::array<const char*, mechanism_count> mechanism_meanings = {
     "heat crossing films between gas, walls, bodies and surroundings",
     "heat conducted in walls and bodies",

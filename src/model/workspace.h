@@ -21,7 +21,8 @@
 
 namespace gaskettle {
 
-template <Scalar S_> struct Workspace {
+template <Scalar S_>
+struct Workspace {
   using S = S_;
   const Layout* layout = nullptr;
   S t{};
@@ -36,11 +37,11 @@ template <Scalar S_> struct Workspace {
   std::vector<S> volume;       ///< m3, by space
   std::vector<S> volume_rate;  ///< m3/s, of all but balanced pistons, by space
   std::vector<GasState<S>> gas;
-  std::vector<S> mass;         ///< kg, [space * species_count + species]
-  std::vector<S> mass_rate;    ///< kg/s, likewise
-  std::vector<S> out;          ///< by channel, in SI
+  std::vector<S> mass;           ///< kg, [space * species_count + species]
+  std::vector<S> mass_rate;      ///< kg/s, likewise
+  std::vector<S> out;            ///< by channel, in SI
   std::vector<double> out_rate;  ///< per second, by channel, along the motion; filled only where a guard needs it
-  std::vector<S> scratch;      ///< room for the balance of pistons
+  std::vector<S> scratch;        ///< room for the balance of pistons
   S ambient_temperature{}, wind{};
 
   void prepare(const Layout& l);
@@ -93,7 +94,8 @@ template <Scalar S_> struct Workspace {
   }
 };
 
-template <Scalar S> void Workspace<S>::prepare(const Layout& l) {
+template <Scalar S>
+void Workspace<S>::prepare(const Layout& l) {
   layout = &l;
   species_count = l.mixture.count();
   input.assign(l.inputs.size(), S(0.0));

@@ -1,8 +1,8 @@
 #include "parts/body.h"
 
-#include <cmath>
-
 #include <fmt/format.h>
+
+#include <cmath>
 
 #include "model/enclosure.h"
 
@@ -18,13 +18,17 @@ void Body::read(Section& s) {
     density_ = material->density;
     emissivity_ = material->emissivity;
   }
-  if (const auto c = s.optional_quantity("specific_heat", unit_kinds::specific_heat, "instead of a material", Range::positive)) specific_heat_ = *c;
+  if (const auto c =
+          s.optional_quantity("specific_heat", unit_kinds::specific_heat, "instead of a material", Range::positive))
+    specific_heat_ = *c;
   area_ = s.quantity("area", unit_kinds::area, "in touch with the gas, of one body", Range::positive);
   film_ = s.quantity("film", unit_kinds::film_coefficient, "film coefficient from the gas", Range::not_negative);
   emissivity_ = s.quantity("emissivity", unit_kinds::number, "for radiation with the walls", Range::fraction, "0");
-  half_thickness_ = s.optional_quantity("half_thickness", unit_kinds::length, "then the core lags the face", Range::positive);
+  half_thickness_ =
+      s.optional_quantity("half_thickness", unit_kinds::length, "then the core lags the face", Range::positive);
   count_ = s.integer("count", "so many alike", 1, 1);
-  stated_start_ = s.optional_quantity("temperature", unit_kinds::temperature, "at the start (that of the gas)", Range::positive);
+  stated_start_ =
+      s.optional_quantity("temperature", unit_kinds::temperature, "at the start (that of the gas)", Range::positive);
   if (half_thickness_ && s.has("specific_heat"))
     s.error("half_thickness", fmt::format("'{}': 'half_thickness' needs a 'material', for its conductivity", s.path()));
 }
@@ -45,7 +49,8 @@ void Body::connect(Layout& layout) {
   if (half_thickness_ && conductivity_ > 0.0) {
     WallSpec slab;
     // Mass and area may speak of another thickness than a slab's: the capacity is kept, the path is as stated.
-    slab.layers = {{half_thickness_->si, conductivity_, capacity / area / specific_heat_ / half_thickness_->si, specific_heat_, 0.0}};
+    slab.layers = {{half_thickness_->si, conductivity_, capacity / area / specific_heat_ / half_thickness_->si,
+                    specific_heat_, 0.0}};
     slab.inner_film = film_;
     grid = choose_conduction_grid(slab, layout.run_length / 1000.0);
   }
@@ -63,14 +68,17 @@ void Body::connect(Layout& layout) {
     const double biot = film_ * length / conductivity_;
     layout.facts.push_back({name, "Biot number", biot, unit_kinds::number});
     if (biot > 0.1 && !half_thickness_)
-      layout.advice.push_back(fmt::format("{}: Biot number {:.2g} is above 0.1: its core lags; state 'half_thickness'", name, biot));
+      layout.advice.push_back(
+          fmt::format("{}: Biot number {:.2g} is above 0.1: its core lags; state 'half_thickness'", name, biot));
   }
   if (emissivity_ > 0.0) radiating_ = share_radiation(layout, space->index, area, emissivity_);
   layout.faces.push_back({name, space->index, store_[0], area, emissivity_, false, store_.back()});
   const std::string unit = stated_start_ ? stated_start_->unit : "";
-  channel_ = layout.add_channel(name + ".temperature", unit_kinds::temperature, "temperature of the face", ChannelPhase::state, unit);
+  channel_ = layout.add_channel(name + ".temperature", unit_kinds::temperature, "temperature of the face",
+                                ChannelPhase::state, unit);
   if (store_.size() > 1)
-    layout.add_channel(name + ".core_temperature", unit_kinds::temperature, "temperature of the core", ChannelPhase::state, unit);
+    layout.add_channel(name + ".core_temperature", unit_kinds::temperature, "temperature of the core",
+                       ChannelPhase::state, unit);
 }
 
 }  // namespace gaskettle

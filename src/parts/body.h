@@ -28,25 +28,30 @@ public:
   void declare(Layout& layout);
   void connect(Layout& layout);
 
-  template <class S> void prepare(Workspace<S>& w) const {
+  template <class S>
+  void prepare(Workspace<S>& w) const {
     for (std::size_t i = 0; i < store_.size(); ++i)
       w.temperature[store_[i]] = start_ + w.y[state_[i]] * inverse_capacity_[i];
     w.out[channel_] = w.temperature[store_[0]];
     if (store_.size() > 1) w.out[channel_ + 1] = w.temperature[store_.back()];
   }
 
-  template <class S> void exchange(Workspace<S>& w) const {
+  template <class S>
+  void exchange(Workspace<S>& w) const {
     const S difference = w.temperature[gas_store_] - w.temperature[store_[0]];
     w.heat(gas_store_, store_[0], film_conductance_ * difference, Mechanism::film);
     for (std::size_t i = 0; i + 1 < store_.size(); ++i)
-      w.heat(store_[i], store_[i + 1], link_[i] * (w.temperature[store_[i]] - w.temperature[store_[i + 1]]), Mechanism::conduction);
+      w.heat(store_[i], store_[i + 1], link_[i] * (w.temperature[store_[i]] - w.temperature[store_[i + 1]]),
+             Mechanism::conduction);
     for (const auto& [store, area] : radiating_)
-      w.heat(store_[0], store, radiant_heat<S>(S(area), w.temperature[store_[0]], w.temperature[store]), Mechanism::radiation);
+      w.heat(store_[0], store, radiant_heat<S>(S(area), w.temperature[store_[0]], w.temperature[store]),
+             Mechanism::radiation);
   }
 
 private:
   Reference in_;
-  double mass_ = 0.0, specific_heat_ = 0.0, area_ = 0.0, film_ = 0.0, emissivity_ = 0.0, conductivity_ = 0.0, density_ = 0.0;
+  double mass_ = 0.0, specific_heat_ = 0.0, area_ = 0.0, film_ = 0.0, emissivity_ = 0.0, conductivity_ = 0.0,
+         density_ = 0.0;
   std::optional<Value> half_thickness_, stated_start_;
   std::string temperature_unit_;
   long count_ = 1;

@@ -19,7 +19,8 @@
 
 namespace gaskettle {
 
-template <class... Part> struct PartKinds {
+template <class... Part>
+struct PartKinds {
   using Lists = std::tuple<std::vector<Part>...>;
 };
 

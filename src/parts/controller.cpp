@@ -1,28 +1,33 @@
 #include "parts/controller.h"
 
-#include <cmath>
-
 #include <fmt/format.h>
+
+#include <cmath>
 
 namespace gaskettle {
 
 void Controller::read(Section& s) {
   drives_ = s.reference("drives", "input of a part", "heater.power, port.opening, stirrer.speed, ...", true);
   holds_ = s.reference("holds", "sensor or channel", "what it compares with the setpoint", true);
-  // The setpoint has the unit of what is held, the gain that of what is driven by it: known when all parts are connected.
-  at_node_ = s.raw("at", "setpoint in the unit of what is held; may vary in time", "setpoint; a ramp starts from what the controller reads", true);
-  reverse_ = s.choice("action", {"reverse", "direct"}, "reverse: the output falls as the reading rises", "reverse") == "reverse";
+  // The setpoint has the unit of what is held, the gain that of what is driven by it: known when all parts are
+  // connected.
+  at_node_ = s.raw("at", "setpoint in the unit of what is held; may vary in time",
+                   "setpoint; a ramp starts from what the controller reads", true);
+  reverse_ = s.choice("action", {"reverse", "direct"}, "reverse: the output falls as the reading rises", "reverse") ==
+             "reverse";
   sense_ = reverse_ ? 1.0 : -1.0;
   path_ = s.path();
   context_ = &s.context();
   if (auto by = s.child("by", "the control law", true)) {
     by_node_ = by->node();
     by->exactly_one_of({"on_off", "pi", "pid"});
-    by->raw("on_off", "{dead_band}", "full on or off; dead_band is its total width, centred on the setpoint; starts on", false);
+    by->raw("on_off", "{dead_band}", "full on or off; dead_band is its total width, centred on the setpoint; starts on",
+            false);
     by->raw("pi", "{gain, reset_time}", "output = gain (e + integral of e dt / reset_time)", false);
     by->not_built_yet("pid", "PID in the standard form");
     if (s.describing()) {  // read once the units of what is held and driven are known
-      Section(*context_, path_ + ".by.on_off").raw("dead_band", "difference of what is held", "total width, centred on the setpoint", true);
+      Section(*context_, path_ + ".by.on_off")
+          .raw("dead_band", "difference of what is held", "total width, centred on the setpoint", true);
       Section pi(*context_, path_ + ".by.pi");
       pi.raw("gain", "unit of what is driven per unit of what is held", "output per error", true);
       pi.raw("reset_time", "time", "of the integral", true);
@@ -35,7 +40,8 @@ void Controller::read_by(const UnitKind& held, const UnitKind& driven) {
   if (const Node* n = by_node_->find("on_off")) {
     on_off_ = true;
     Section law(*context_, n, path_ + ".by.on_off");
-    dead_band_ = law.quantity("dead_band", difference_kind(held), "total width, centred on the setpoint", Range::positive);
+    dead_band_ =
+        law.quantity("dead_band", difference_kind(held), "total width, centred on the setpoint", Range::positive);
   } else if (const Node* pi = by_node_->find("pi")) {
     Section law(*context_, pi, path_ + ".by.pi");
     gain_ = law.quantity("gain", ratio(driven, held), "output per error", Range::positive);
@@ -50,10 +56,16 @@ void Controller::connect(Layout& layout) {
   if (driven_ < 0 || reading_ < 0) return;
   const InputInfo driven = layout.inputs[driven_];  // a copy: the list grows below
   const ChannelDoc held = layout.channels[reading_];
-  if (driven.driver >= 0) layout.error(drives_.place, fmt::format("'{}' is already driven by another controller", drives_.name));
-  if (driven.given) layout.error(drives_.place, fmt::format("'{}' has a value of its own in the model and is driven by controller '{}': leave one out", drives_.name, name));
+  if (driven.driver >= 0)
+    layout.error(drives_.place, fmt::format("'{}' is already driven by another controller", drives_.name));
+  if (driven.given)
+    layout.error(drives_.place,
+                 fmt::format("'{}' has a value of its own in the model and is driven by controller '{}': leave one out",
+                             drives_.name, name));
   if (held.phase != ChannelPhase::state)
-    layout.error(holds_.place, fmt::format("controller '{}' cannot hold '{}' directly; put a sensor with a time_constant between", name, holds_.name));
+    layout.error(holds_.place,
+                 fmt::format("controller '{}' cannot hold '{}' directly; put a sensor with a time_constant between",
+                             name, holds_.name));
   low_ = driven.low;
   high_ = driven.high;
   // A cooler's power is negative: full output is the lower end.
@@ -65,8 +77,11 @@ void Controller::connect(Layout& layout) {
   setpoint_ = layout.add_input(name + ".setpoint", held.kind, at, 0.0, place);
   setpoint_spec_ = at;
   layout.inputs[driven_].driver = static_cast<int>(layout.channels.size());
-  if (!on_off_) integral_ = layout.add_state(name + ".integral", (held.kind.flavour == UnitFlavour::pressure ? 1e4 : 10.0) * reset_time_);
-  channel_ = layout.add_channel(name + ".output", driven.kind, "output, as it drives " + drives_.name, ChannelPhase::state);
+  if (!on_off_)
+    integral_ =
+        layout.add_state(name + ".integral", (held.kind.flavour == UnitFlavour::pressure ? 1e4 : 10.0) * reset_time_);
+  channel_ =
+      layout.add_channel(name + ".output", driven.kind, "output, as it drives " + drives_.name, ChannelPhase::state);
   layout.add_channel(name + ".setpoint", held.kind, "setpoint", ChannelPhase::state, held.unit);
 }
 
@@ -80,8 +95,10 @@ void Controller::start(Event& e) {
   }
   mode_ = Mode::free;
   const double output = unlimited(e.now());
-  if ((output - high_) * (high_ - low_) >= 0.0) rest_on_limit(true, e);
-  else if ((low_ - output) * (high_ - low_) > 0.0) rest_on_limit(false, e);
+  if ((output - high_) * (high_ - low_) >= 0.0)
+    rest_on_limit(true, e);
+  else if ((low_ - output) * (high_ - low_) > 0.0)
+    rest_on_limit(false, e);
 }
 
 void Controller::guards(const Workspace<double>& w, double* g) const {
@@ -117,9 +134,12 @@ void Controller::rest_on_limit(bool high, Event& e) {
   const Workspace<double>& w = e.now();
   const double end = (high ? 1.0 : -1.0) * (high_ > low_ ? 1.0 : -1.0);
   const double beyond = end * (unlimited(w) - (high ? high_ : low_));
-  const bool would_fall_back = beyond < 1e-6 * std::abs(high_ - low_) && end * error_rate(w, e.channel_rate(reading_)) < 0.0;
-  if (would_fall_back) mode_ = high ? Mode::held_high : Mode::held_low;
-  else mode_ = high ? Mode::limited_high : Mode::limited_low;
+  const bool would_fall_back =
+      beyond < 1e-6 * std::abs(high_ - low_) && end * error_rate(w, e.channel_rate(reading_)) < 0.0;
+  if (would_fall_back)
+    mode_ = high ? Mode::held_high : Mode::held_low;
+  else
+    mode_ = high ? Mode::limited_high : Mode::limited_low;
 }
 
 void Controller::on_guard(int which, Event& e) {
@@ -165,8 +185,10 @@ void Controller::on_inputs_changed(Event& e) {
   e.y[integral_] = reset_time_ * (limit / gain_ - error(*e.before));
   mode_ = Mode::free;
   const double output = unlimited(e.now());
-  if (end * (output - limit) > 0.0) mode_ = high ? Mode::limited_high : Mode::limited_low;
-  else e.log(name, high ? "leaves its upper limit" : "leaves its lower limit", limit, output);
+  if (end * (output - limit) > 0.0)
+    mode_ = high ? Mode::limited_high : Mode::limited_low;
+  else
+    e.log(name, high ? "leaves its upper limit" : "leaves its lower limit", limit, output);
 }
 
 }  // namespace gaskettle

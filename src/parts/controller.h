@@ -27,22 +27,29 @@ public:
   void connect(Layout& layout);
   void start(Event& e);
 
-  template <class S> void control(Workspace<S>& w) const {
+  template <class S>
+  void control(Workspace<S>& w) const {
     S output = S(low_);
     switch (mode_) {
       case Mode::off:
       case Mode::limited_low:
-      case Mode::held_low: break;
+      case Mode::held_low:
+        break;
       case Mode::on:
       case Mode::limited_high:
-      case Mode::held_high: output = S(high_); break;
-      case Mode::free: output = unlimited(w); break;
+      case Mode::held_high:
+        output = S(high_);
+        break;
+      case Mode::free:
+        output = unlimited(w);
+        break;
     }
     w.input[driven_] = output;
     w.out[channel_] = output;
     w.out[channel_ + 1] = w.input[setpoint_];
   }
-  template <class S> void finish(Workspace<S>& w) const {
+  template <class S>
+  void finish(Workspace<S>& w) const {
     if (integral_ >= 0) w.f[integral_] = mode_ == Mode::free ? error(w) : S(0.0);
   }
 
@@ -57,8 +64,12 @@ public:
   void on_inputs_changed(Event& e);
 
 private:
-  template <class S> S error(const Workspace<S>& w) const { return sense_ * (w.input[setpoint_] - w.out[reading_]); }
-  template <class S> S unlimited(const Workspace<S>& w) const {
+  template <class S>
+  S error(const Workspace<S>& w) const {
+    return sense_ * (w.input[setpoint_] - w.out[reading_]);
+  }
+  template <class S>
+  S unlimited(const Workspace<S>& w) const {
     return gain_ * (error(w) + w.y[integral_] / reset_time_);
   }
   double error_rate(const Workspace<double>& w, double reading_rate) const {

@@ -1,8 +1,8 @@
 #include "parts/gas_space.h"
 
-#include <algorithm>
-
 #include <fmt/format.h>
+
+#include <algorithm>
 
 #include "model/composition.h"
 
@@ -11,13 +11,16 @@ namespace gaskettle {
 void GasSpace::read(Section& s) {
   s.exactly_one_of({"volume", "shape"});
   stated_volume_ = s.optional_quantity("volume", unit_kinds::volume, "of the gas at the start", Range::positive);
-  if (auto shape = s.child("shape", "instead of volume: its form, which also gives areas and lengths")) shape_ = read_shape(*shape);
+  if (auto shape = s.child("shape", "instead of volume: its form, which also gives areas and lengths"))
+    shape_ = read_shape(*shape);
   composition_ = read_composition(s, "gas", "what it holds at the start");
   start_temperature_ = s.quantity("temperature", unit_kinds::temperature, "of the gas at the start", Range::positive);
   s.at_most_one_of({"pressure", "mass"});
-  stated_pressure_ = s.optional_quantity("pressure", unit_kinds::pressure,
-                                         "at the start; may be left out where a balanced piston closes the space", Range::positive);
-  stated_mass_ = s.optional_quantity("mass", unit_kinds::mass, "of gas at the start, instead of pressure", Range::positive);
+  stated_pressure_ =
+      s.optional_quantity("pressure", unit_kinds::pressure,
+                          "at the start; may be left out where a balanced piston closes the space", Range::positive);
+  stated_mass_ =
+      s.optional_quantity("mass", unit_kinds::mass, "of gas at the start, instead of pressure", Range::positive);
   has_content_ = s.has("pressure") || s.has("mass");
   count_ = s.integer("count", "so many alike, walls and bodies with them", 1, 1);
 }
@@ -52,7 +55,8 @@ void GasSpace::connect(Layout& layout) {
   if (info.given_mass)
     info.pressure = *info.given_mass / molar_mass * molar_gas_constant * info.temperature / info.volume;
   if (!info.pressure) {
-    if (!has_content_ && !layout.loose_piston) layout.error(place, fmt::format("gas space '{}' needs 'pressure' or 'mass'", name));
+    if (!has_content_ && !layout.loose_piston)
+      layout.error(place, fmt::format("gas space '{}' needs 'pressure' or 'mass'", name));
     info.pressure = layout.atmosphere_pressure;
   }
   volume_ = info.volume;
@@ -72,7 +76,8 @@ void GasSpace::connect(Layout& layout) {
   for (std::size_t k = 0; k < x.size(); ++k) {
     if (!info.carries[k]) continue;
     info.mass[k] = total * fraction[k];
-    info.mass_state[k] = layout.add_state(fmt::format("{}.mass.{}", name, mixture.species(static_cast<int>(k)).name), size);
+    info.mass_state[k] =
+        layout.add_state(fmt::format("{}.mass.{}", name, mixture.species(static_cast<int>(k)).name), size);
     fraction_species_.push_back(static_cast<int>(k));
   }
   mass_ = info.mass;
@@ -83,28 +88,33 @@ void GasSpace::connect(Layout& layout) {
 
   layout.facts.push_back({name, "gas mass", total, unit_kinds::mass});
   layout.facts.push_back({name, "p V", *info.pressure * volume_, unit_kinds::energy});
-  layout.facts.push_back({name, "heat capacity of the gas at constant volume", total * start.cv, unit_kinds::heat_capacity});
+  layout.facts.push_back(
+      {name, "heat capacity of the gas at constant volume", total * start.cv, unit_kinds::heat_capacity});
   const std::string tu = start_temperature_.unit;
   const std::string pu = stated_pressure_ ? stated_pressure_->unit : "";
-  const auto channel = [&](const std::string& q, const UnitKind& k, const std::string& m, ChannelPhase p, const std::string& u) {
-    return layout.add_channel(name + "." + q, k, m, p, u);
-  };
+  const auto channel = [&](const std::string& q, const UnitKind& k, const std::string& m, ChannelPhase p,
+                           const std::string& u) { return layout.add_channel(name + "." + q, k, m, p, u); };
   channel_ = channel("temperature", unit_kinds::temperature, "gas temperature", ChannelPhase::state, tu);
-  layout.pressure_channels.push_back(channel("pressure", unit_kinds::pressure, "gas pressure, absolute", ChannelPhase::state, pu));
+  layout.pressure_channels.push_back(
+      channel("pressure", unit_kinds::pressure, "gas pressure, absolute", ChannelPhase::state, pu));
   channel("volume", unit_kinds::volume, "gas volume", ChannelPhase::state, stated_volume_ ? stated_volume_->unit : "");
   channel("mass", unit_kinds::mass, "mass of gas", ChannelPhase::state, "");
-  channel("energy", unit_kinds::energy, "internal energy of the gas; ideal gas at 298.15 K has h = 0", ChannelPhase::observed, "");
+  channel("energy", unit_kinds::energy, "internal energy of the gas; ideal gas at 298.15 K has h = 0",
+          ChannelPhase::observed, "");
   channel("specific_entropy", unit_kinds::specific_heat, "entropy of the gas per mass", ChannelPhase::observed, "");
   channel("density", unit_kinds::density, "density of the gas", ChannelPhase::observed, "");
   for (const int k : fraction_species_)
-    channel("mole_fraction." + mixture.species(k).name, unit_kinds::number, "mole fraction of " + mixture.species(k).name, ChannelPhase::observed, "");
+    channel("mole_fraction." + mixture.species(k).name, unit_kinds::number,
+            "mole fraction of " + mixture.species(k).name, ChannelPhase::observed, "");
 }
 
 void GasSpace::on_guard(int which, Event& e) const {
   const double t = e.before->gas[index_].temperature;
-  e.log(name, which == 0 ? "above the published range of the gas data" : "below the published range of the gas data", t, t);
-  e.layout->warnings.push_back(fmt::format("{}: gas at {:.6g} K leaves the published range {:.0f} to {:.0f} K of its data at {:.6g} s; cp is held outside",
-                                           name, t, lowest_, highest_, e.time));
+  e.log(name, which == 0 ? "above the published range of the gas data" : "below the published range of the gas data", t,
+        t);
+  e.layout->warnings.push_back(fmt::format(
+      "{}: gas at {:.6g} K leaves the published range {:.0f} to {:.0f} K of its data at {:.6g} s; cp is held outside",
+      name, t, lowest_, highest_, e.time));
 }
 
 }  // namespace gaskettle

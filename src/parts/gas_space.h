@@ -26,7 +26,8 @@ public:
   void declare(Layout& layout);
   void connect(Layout& layout);
 
-  template <class S> void prepare(Workspace<S>& w) const {
+  template <class S>
+  void prepare(Workspace<S>& w) const {
     w.volume[index_] = S(volume_);
     w.volume_rate[index_] = S(0.0);
     S* mass = w.space_mass(index_);
@@ -37,7 +38,8 @@ public:
     }
   }
 
-  template <class S> void evaluate(Workspace<S>& w) const {
+  template <class S>
+  void evaluate(Workspace<S>& w) const {
     const S energy = energy_ + w.y[energy_state_];
     const S total = w.total_mass(index_);
     // A straight line from the start: near enough that a few Newton steps do.
@@ -50,12 +52,14 @@ public:
     w.out[channel_ + 3] = total;
   }
 
-  template <class S> void finish(Workspace<S>& w) const {
+  template <class S>
+  void finish(Workspace<S>& w) const {
     for (int k = 0; k < w.species_count; ++k)
       if (mass_state_[k] >= 0) w.f[mass_state_[k]] = w.mass_rate[index_ * w.species_count + k];
   }
 
-  template <class S> void observe(Workspace<S>& w) const {
+  template <class S>
+  void observe(Workspace<S>& w) const {
     w.out[channel_ + 4] = energy_ + w.y[energy_state_];
     w.out[channel_ + 5] = w.gas[index_].entropy;
     w.out[channel_ + 6] = w.gas[index_].density;
@@ -69,7 +73,8 @@ public:
   }
 
   /// Observers: leaving the published range of the gas data.
-  static constexpr std::array guard_names = {"leaves the published range upward", "leaves the published range downward"};
+  static constexpr std::array guard_names = {"leaves the published range upward",
+                                             "leaves the published range downward"};
   static constexpr bool guards_disturb = false;
   void guards(const Workspace<double>& w, double* g) const {
     g[0] = w.gas[index_].temperature - highest_;

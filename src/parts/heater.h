@@ -27,20 +27,23 @@ public:
   void declare(Layout&) {}
   void connect(Layout& layout);
 
-  template <class S> void prepare(Workspace<S>& w) const {
+  template <class S>
+  void prepare(Workspace<S>& w) const {
     if (state_ < 0) return;
     w.temperature[store_] = start_ + w.y[state_] * inverse_capacity_;
     w.out[channel_ + 1] = w.temperature[store_];
   }
 
-  template <class S> void exchange(Workspace<S>& w) const {
+  template <class S>
+  void exchange(Workspace<S>& w) const {
     const S& power = w.input[power_input_];
     w.out[channel_] = power;
     w.supply(store_, power, Mechanism::heater, heater_entry_);
     if (state_ < 0) return;
     w.heat(store_, receiver_, conductance_ * (w.temperature[store_] - w.temperature[receiver_]), Mechanism::film);
     for (const auto& [store, area] : radiating_)
-      w.heat(store_, store, radiant_heat<S>(S(area), w.temperature[store_], w.temperature[store]), Mechanism::radiation);
+      w.heat(store_, store, radiant_heat<S>(S(area), w.temperature[store_], w.temperature[store]),
+             Mechanism::radiation);
   }
 
 private:

@@ -1,9 +1,9 @@
 #include "parts/piston.h"
 
+#include <fmt/format.h>
+
 #include <cmath>
 #include <numbers>
-
-#include <fmt/format.h>
 
 #include "laws/gas_spring.h"
 
@@ -16,18 +16,26 @@ constexpr double rest_speed = 1e-4;  // m/s: contact with a stop below this is r
 void Piston::read_friction(Section& s) {
   auto f = s.child("friction", "none where left out");
   if (!f) return;
-  friction_.kinetic = f->quantity("kinetic", unit_kinds::force, "Coulomb friction while it slides", Range::not_negative, "0 N");
-  const auto breakaway = f->optional_quantity("breakaway", unit_kinds::force, "force that starts it (that of kinetic)", Range::not_negative);
+  friction_.kinetic =
+      f->quantity("kinetic", unit_kinds::force, "Coulomb friction while it slides", Range::not_negative, "0 N");
+  const auto breakaway = f->optional_quantity("breakaway", unit_kinds::force, "force that starts it (that of kinetic)",
+                                              Range::not_negative);
   friction_.breakaway = breakaway ? breakaway->si : friction_.kinetic;
-  friction_.viscous = f->quantity("viscous", unit_kinds::viscous_coefficient, "force per velocity", Range::not_negative, "0 N s/m");
-  if (const auto v = f->optional_quantity("stribeck_velocity", unit_kinds::velocity, "over which breakaway falls to kinetic", Range::positive)) friction_.stribeck_velocity = *v;
-  heat_to_ = f->choice("heat_to", {"gas", "wall", "surroundings"}, "who gets the friction heat (wall, or surroundings where there is none)", "");
+  friction_.viscous =
+      f->quantity("viscous", unit_kinds::viscous_coefficient, "force per velocity", Range::not_negative, "0 N s/m");
+  if (const auto v = f->optional_quantity("stribeck_velocity", unit_kinds::velocity,
+                                          "over which breakaway falls to kinetic", Range::positive))
+    friction_.stribeck_velocity = *v;
+  heat_to_ = f->choice("heat_to", {"gas", "wall", "surroundings"},
+                       "who gets the friction heat (wall, or surroundings where there is none)", "");
   if (s.describing()) return;
   heat_to_place_ = f->place_of("heat_to");
   if (friction_.breakaway < friction_.kinetic)
     f->error("breakaway", fmt::format("'{}': breakaway must not be below kinetic friction", f->path()));
   if (friction_.stribeck_velocity > 0.0 && motion_ == Motion::balanced)
-    f->error("stribeck_velocity", fmt::format("'{}': a balanced piston has no velocity of its own to speak of; use motion: inertial", f->path()));
+    f->error(
+        "stribeck_velocity",
+        fmt::format("'{}': a balanced piston has no velocity of its own to speak of; use motion: inertial", f->path()));
 }
 
 void Piston::read_back(Section& s) {
@@ -37,24 +45,31 @@ void Piston::read_back(Section& s) {
   back->at_most_one_of({"pressure", "space"});
   back_spec_ = back->signal("pressure", unit_kinds::pressure, "a stated pressure", Range::not_negative);
   back_reference_ = back->reference("space", "gas space", "a second gas space", false);
-  if (const auto a = back->optional_quantity("area", unit_kinds::area, "on which it acts: the rod side", Range::positive)) back_area_ = *a;
+  if (const auto a =
+          back->optional_quantity("area", unit_kinds::area, "on which it acts: the rod side", Range::positive))
+    back_area_ = *a;
 }
 
 void Piston::read(Section& s) {
   closes_ = s.reference("closes", "gas space", "the space whose volume grows with x", true);
   s.exactly_one_of({"bore", "area"});
   area_ = 1.0;
-  if (const auto bore = s.optional_quantity("bore", unit_kinds::length, "of the cylinder", Range::positive)) area_ = std::numbers::pi / 4.0 * bore->si * bore->si;
+  if (const auto bore = s.optional_quantity("bore", unit_kinds::length, "of the cylinder", Range::positive))
+    area_ = std::numbers::pi / 4.0 * bore->si * bore->si;
   if (const auto area = s.optional_quantity("area", unit_kinds::area, "of the piston", Range::positive)) area_ = *area;
   const Value at = s.quantity("at", unit_kinds::length, "position x at the start", Range::any);
   at_ = at;
   length_unit_ = at.unit;
-  const std::string motion = s.choice("motion", {"balanced", "inertial", "driven"}, "quasi-static, with inertia, or given", "balanced");
+  const std::string motion =
+      s.choice("motion", {"balanced", "inertial", "driven"}, "quasi-static, with inertia, or given", "balanced");
   motion_ = motion == "inertial" ? Motion::inertial : (motion == "driven" ? Motion::driven : Motion::balanced);
   mass_spec_ = s.signal("mass", unit_kinds::mass, "of the piston and the loads that stand on it", Range::not_negative);
-  if (const auto v = s.optional_quantity("velocity", unit_kinds::velocity, "at the start, of an inertial piston", Range::any)) start_velocity_ = *v;
+  if (const auto v =
+          s.optional_quantity("velocity", unit_kinds::velocity, "at the start, of an inertial piston", Range::any))
+    start_velocity_ = *v;
   position_spec_ = s.signal("position", unit_kinds::length, "of a driven piston", Range::any);
-  flow_spec_ = s.signal("flow", unit_kinds::liquid_flow, "of the liquid behind a driven piston; positive pushes toward smaller x", Range::any);
+  flow_spec_ = s.signal("flow", unit_kinds::liquid_flow,
+                        "of the liquid behind a driven piston; positive pushes toward smaller x", Range::any);
   if (const Node* stops = s.raw("stops", "[low, high], two lengths", "positions it cannot pass", false)) {
     stops_place_ = stops->place;
     if (!stops->is_list() || stops->items.size() != 2) {
@@ -66,13 +81,17 @@ void Piston::read(Section& s) {
         low_ = *low;
         high_ = *high;
         has_stops_ = true;
-        if (low_ >= high_) s.error("stops", fmt::format("'{}.stops' must rise", s.path()));
-        else if (at.given && (at_ < low_ || at_ > high_)) s.error("at", fmt::format("'{}.at' lies outside its stops", s.path()));
+        if (low_ >= high_)
+          s.error("stops", fmt::format("'{}.stops' must rise", s.path()));
+        else if (at.given && (at_ < low_ || at_ > high_))
+          s.error("at", fmt::format("'{}.at' lies outside its stops", s.path()));
       }
     }
   }
-  restitution_ = s.quantity("restitution", unit_kinds::number, "speed after hitting a stop over speed before", Range::fraction, "0");
-  tilt_ = s.quantity("tilt", unit_kinds::angle, "from upright; upright: the gas below carries the weight", Range::any, "0 deg");
+  restitution_ = s.quantity("restitution", unit_kinds::number, "speed after hitting a stop over speed before",
+                            Range::fraction, "0");
+  tilt_ = s.quantity("tilt", unit_kinds::angle, "from upright; upright: the gas below carries the weight", Range::any,
+                     "0 deg");
   if (auto spring = s.child("spring", "pushes toward the position where it is free")) {
     stiffness_ = spring->quantity("stiffness", unit_kinds::stiffness, "force per length", Range::positive);
     free_at_ = spring->quantity("free_at", unit_kinds::length, "position where it exerts no force", Range::any);
@@ -86,11 +105,13 @@ void Piston::read(Section& s) {
 void Piston::check(Section& s) {
   const bool driven = motion_ == Motion::driven;
   driven_by_flow_ = flow_spec_.given;
-  if (driven && s.has("position") == s.has("flow")) s.error_here(fmt::format("'{}' is driven: it needs 'position' or 'flow', one of them", s.path()));
+  if (driven && s.has("position") == s.has("flow"))
+    s.error_here(fmt::format("'{}' is driven: it needs 'position' or 'flow', one of them", s.path()));
   if (!driven)
     for (const char* key : {"position", "flow"})
       if (s.has(key)) s.error(key, fmt::format("'{}': '{}' goes with motion: driven", s.path(), key));
-  if (motion_ != Motion::inertial && s.has("velocity")) s.error("velocity", fmt::format("'{}': 'velocity' goes with motion: inertial", s.path()));
+  if (motion_ != Motion::inertial && s.has("velocity"))
+    s.error("velocity", fmt::format("'{}': 'velocity' goes with motion: inertial", s.path()));
   if (motion_ == Motion::inertial && mass_spec_.sound) {
     const double least = mass_spec_.given ? mass_spec_.make(mass_spec_.level).range().first : 0.0;
     if (!(least > 0.0)) s.error("mass", fmt::format("'{}' is inertial: its mass must always be above zero", s.path()));
@@ -98,15 +119,18 @@ void Piston::check(Section& s) {
   if (driven && position_spec_.given && position_spec_.sound) {
     const Signal path = position_spec_.make(at_);
     if (s.has("at") && std::abs(path.at(0.0) - at_) > 1e-9 * std::max(1.0, std::abs(at_)))
-      s.error("position", fmt::format("'{}.position' starts at {:.6g} m, but 'at' is {:.6g} m", s.path(), path.at(0.0), at_));
+      s.error("position",
+              fmt::format("'{}.position' starts at {:.6g} m, but 'at' is {:.6g} m", s.path(), path.at(0.0), at_));
     const auto [low, high] = path.range();
-    if (has_stops_ && (low < low_ - 1e-12 || high > high_ + 1e-12)) s.error("position", fmt::format("'{}.position' goes beyond the stops", s.path()));
+    if (has_stops_ && (low < low_ - 1e-12 || high > high_ + 1e-12))
+      s.error("position", fmt::format("'{}.position' goes beyond the stops", s.path()));
   }
 }
 
 double Piston::balance_pressure(const Layout& layout, double back_pressure) const {
   const double g = layout.gravity * std::cos(tilt_);
-  const double opposing = back_pressure * back_area_ + mass_spec_.initial(0.0) * g + stiffness_ * (at_ - free_at_) + force_spec_.initial(0.0);
+  const double opposing = back_pressure * back_area_ + mass_spec_.initial(0.0) * g + stiffness_ * (at_ - free_at_) +
+                          force_spec_.initial(0.0);
   return opposing / area_;
 }
 
@@ -114,28 +138,39 @@ void Piston::declare(Layout& layout) {
   SpaceInfo* space = layout.space(closes_);
   SpaceInfo* back = layout.space(back_reference_);
   // With a mistake in it, or in what it touches, its balance would only echo that.
-  const bool sound = layout.sound(name) && (space == nullptr || layout.sound(space->name)) && (back == nullptr || layout.sound(back->name));
+  const bool sound = layout.sound(name) && (space == nullptr || layout.sound(space->name)) &&
+                     (back == nullptr || layout.sound(back->name));
   if (motion_ == Motion::balanced && (space == nullptr || !sound)) layout.loose_piston = true;
   if (space == nullptr) return;
   space->closed_by_piston = true;
   if (back != nullptr) {
     back->closed_by_piston = true;
-    if (back == space) layout.error(back_reference_.place, fmt::format("piston '{}' has '{}' on both sides", name, space->name));
+    if (back == space)
+      layout.error(back_reference_.place, fmt::format("piston '{}' has '{}' on both sides", name, space->name));
   }
   for (const SpaceInfo* s : {static_cast<const SpaceInfo*>(space), static_cast<const SpaceInfo*>(back)})
-    if (s != nullptr && s->count != 1.0) layout.error(place, fmt::format("piston '{}' closes '{}', which has a count; state the spaces one by one", name, s->name));
+    if (s != nullptr && s->count != 1.0)
+      layout.error(
+          place, fmt::format("piston '{}' closes '{}', which has a count; state the spaces one by one", name, s->name));
   if (has_stops_ && sound) {
     const double least = space->volume + area_ * (low_ - at_);
-    if (least <= 0.0) layout.error(stops_place_, fmt::format("piston '{}': at its low stop '{}' would have no volume ({:.4g} m3)", name, space->name, least));
+    if (least <= 0.0)
+      layout.error(stops_place_, fmt::format("piston '{}': at its low stop '{}' would have no volume ({:.4g} m3)", name,
+                                             space->name, least));
     if (back != nullptr && back->volume - back_area_ * (high_ - at_) <= 0.0)
-      layout.error(stops_place_, fmt::format("piston '{}': at its high stop '{}' would have no volume", name, back->name));
+      layout.error(stops_place_,
+                   fmt::format("piston '{}': at its high stop '{}' would have no volume", name, back->name));
   }
   if (motion_ != Motion::balanced || friction_.viscous > 0.0 || !sound) return;
   if (back != nullptr && !back->pressure) return;
-  const double behind = back != nullptr ? *back->pressure : (back_spec_.given ? back_spec_.initial(layout.atmosphere_pressure) : layout.atmosphere_pressure);
+  const double behind = back != nullptr ? *back->pressure
+                                        : (back_spec_.given ? back_spec_.initial(layout.atmosphere_pressure)
+                                                            : layout.atmosphere_pressure);
   const double right = balance_pressure(layout, behind);
   if (!(right > 0.0)) {
-    layout.error(place, fmt::format("piston '{}': its balance needs a pressure of {:.6g} Pa in '{}', which is not above zero", name, right, space->name));
+    layout.error(place,
+                 fmt::format("piston '{}': its balance needs a pressure of {:.6g} Pa in '{}', which is not above zero",
+                             name, right, space->name));
     layout.loose_piston = true;
     return;
   }
@@ -150,12 +185,16 @@ void Piston::declare(Layout& layout) {
   const bool on_high = has_stops_ && at_ >= high_ * (1 - 1e-12) - 1e-15 && net > -held;
   if (on_low || on_high || (held > 0.0 && std::abs(net) <= held)) return;
   if (std::abs(*space->pressure - right) > 1e-3 * right) {
-    layout.error(space->pressure_place, fmt::format("gas space '{}': the balanced piston '{}' needs {:.6g} Pa abs ({:.6g} Pa gauge) at the start; leave 'pressure' out, or use motion: inertial",
-                                           space->name, name, right, right - layout.atmosphere_pressure));
+    layout.error(space->pressure_place,
+                 fmt::format("gas space '{}': the balanced piston '{}' needs {:.6g} Pa abs ({:.6g} Pa gauge) at the "
+                             "start; leave 'pressure' out, or use motion: inertial",
+                             space->name, name, right, right - layout.atmosphere_pressure));
     return;
   }
   if (*space->pressure != right)
-    layout.advice.push_back(fmt::format("{}: starts at {:.7g} Pa abs, the balance of piston {}, instead of the {:.7g} Pa stated", space->name, right, name, *space->pressure));
+    layout.advice.push_back(
+        fmt::format("{}: starts at {:.7g} Pa abs, the balance of piston {}, instead of the {:.7g} Pa stated",
+                    space->name, right, name, *space->pressure));
   space->pressure = right;
 }
 
@@ -167,9 +206,13 @@ void Piston::find_receiver(Layout& layout) {
       wall = f.store;
       break;
     }
-  if (heat_to_ == "gas") heat_store_ = space_store_;
-  else if (heat_to_ == "wall" || heat_to_.empty()) heat_store_ = wall;
-  if (heat_to_ == "wall" && wall < 0 && !layout.any_unsound("wall")) layout.error(heat_to_place_, fmt::format("piston '{}': there is no wall around '{}' to take its friction heat", name, layout.spaces[space_].name));
+  if (heat_to_ == "gas")
+    heat_store_ = space_store_;
+  else if (heat_to_ == "wall" || heat_to_.empty())
+    heat_store_ = wall;
+  if (heat_to_ == "wall" && wall < 0 && !layout.any_unsound("wall"))
+    layout.error(heat_to_place_, fmt::format("piston '{}': there is no wall around '{}' to take its friction heat",
+                                             name, layout.spaces[space_].name));
 }
 
 /// Balanced or inertial: the period of the gas spring against the time scale of the run.
@@ -177,15 +220,21 @@ void Piston::advise(Layout& layout, const SpaceInfo& space) const {
   const double mass = layout.inputs[mass_input_].signal.at(0.0);
   if (!(mass > 0.0) || motion_ == Motion::driven) return;
   const std::vector<double> fraction = layout.mass_fractions(space.composition);
-  const double gamma = heat_capacity_ratio(layout.mixture.from_temperature(fraction.data(), space.temperature, *space.pressure));
+  const double gamma =
+      heat_capacity_ratio(layout.mixture.from_temperature(fraction.data(), space.temperature, *space.pressure));
   const double stiffness = gas_spring_stiffness(gamma, *space.pressure, area_, space.volume) + stiffness_;
   const double period = oscillation_period(mass, stiffness);
   layout.facts.push_back({name, "oscillation period on the gas", period, unit_kinds::time});
   layout.facts.push_back({name, "area", area_, unit_kinds::area});
   if (motion_ == Motion::balanced && period > 0.01 * layout.run_length)
-    layout.advice.push_back(fmt::format("{}: it swings with a period of {:.3g} s, not far below the run's {:.3g} s: motion: inertial shows what balanced hides", name, period, layout.run_length));
+    layout.advice.push_back(
+        fmt::format("{}: it swings with a period of {:.3g} s, not far below the run's {:.3g} s: motion: inertial shows "
+                    "what balanced hides",
+                    name, period, layout.run_length));
   if (motion_ == Motion::inertial && period < 1e-5 * layout.run_length && friction_.viscous <= 0.0)
-    layout.advice.push_back(fmt::format("{}: it swings with a period of {:.3g} s in a run of {:.3g} s: motion: balanced is far quicker to compute", name, period, layout.run_length));
+    layout.advice.push_back(fmt::format(
+        "{}: it swings with a period of {:.3g} s in a run of {:.3g} s: motion: balanced is far quicker to compute",
+        name, period, layout.run_length));
 }
 
 void Piston::connect(Layout& layout) {
@@ -205,7 +254,8 @@ void Piston::connect(Layout& layout) {
   if (motion_ != Motion::driven || driven_by_flow_) position_state_ = layout.add_state(name + ".travel", 0.1 * reach);
   mass_input_ = layout.add_input(name + ".mass", unit_kinds::mass, mass_spec_, 0.0, place);
   force_input_ = layout.add_input(name + ".force", unit_kinds::force, force_spec_, 0.0, place);
-  mass_ramps_ = mass_spec_.kind == SignalSpec::Kind::ramp || mass_spec_.kind == SignalSpec::Kind::sine || (mass_spec_.kind == SignalSpec::Kind::schedule && !mass_spec_.held);
+  mass_ramps_ = mass_spec_.kind == SignalSpec::Kind::ramp || mass_spec_.kind == SignalSpec::Kind::sine ||
+                (mass_spec_.kind == SignalSpec::Kind::schedule && !mass_spec_.held);
   if (motion_ == Motion::inertial) {
     const double gas_stiffness = *space->pressure * area_ / column;
     const double frequency = std::sqrt((gas_stiffness + stiffness_) / layout.inputs[mass_input_].signal.at(0.0));
@@ -213,9 +263,12 @@ void Piston::connect(Layout& layout) {
     const double speed = std::max(0.1 * reach * frequency, std::abs(start_velocity_));
     kinetic_scale_ = 0.5 * layout.inputs[mass_input_].signal.at(0.0) * speed * speed;
   }
-  if (position_spec_.given) position_input_ = layout.add_input(name + ".position", unit_kinds::length, position_spec_, at_, place);
+  if (position_spec_.given)
+    position_input_ = layout.add_input(name + ".position", unit_kinds::length, position_spec_, at_, place);
   if (flow_spec_.given) flow_input_ = layout.add_input(name + ".flow", unit_kinds::liquid_flow, flow_spec_, 0.0, place);
-  if (back_spec_.given) back_input_ = layout.add_input(name + ".back.pressure", unit_kinds::pressure, back_spec_, layout.atmosphere_pressure, place);
+  if (back_spec_.given)
+    back_input_ =
+        layout.add_input(name + ".back.pressure", unit_kinds::pressure, back_spec_, layout.atmosphere_pressure, place);
   find_receiver(layout);
 
   advise(layout, *space);
@@ -224,15 +277,19 @@ void Piston::connect(Layout& layout) {
   const auto entry = [&](LedgerTerm term) { return layout.ledger(term, name, work); };
   lifting_entry_ = entry(LedgerTerm::lifting);
   if (stiffness_ > 0.0) spring_entry_ = entry(LedgerTerm::spring);
-  if (back_input_ >= 0) back_entry_ = entry(LedgerTerm::back);
-  else if (back_space_ < 0) atmosphere_entry_ = entry(LedgerTerm::atmosphere);
+  if (back_input_ >= 0)
+    back_entry_ = entry(LedgerTerm::back);
+  else if (back_space_ < 0)
+    atmosphere_entry_ = entry(LedgerTerm::atmosphere);
   applied_entry_ = entry(LedgerTerm::applied);
   friction_entry_ = entry(LedgerTerm::friction);
   kinetic_entry_ = entry(LedgerTerm::kinetic);
   impact_entry_ = entry(LedgerTerm::impact);
   if (heat_store_ >= 0) returned_entry_ = entry(LedgerTerm::returned);
-  channel_ = layout.add_channel(name + ".position", unit_kinds::length, "position x; grows with the space it closes", ChannelPhase::state, length_unit_);
-  layout.add_channel(name + ".velocity", unit_kinds::velocity, "velocity", motion_ == Motion::balanced ? ChannelPhase::flow : ChannelPhase::state);
+  channel_ = layout.add_channel(name + ".position", unit_kinds::length, "position x; grows with the space it closes",
+                                ChannelPhase::state, length_unit_);
+  layout.add_channel(name + ".velocity", unit_kinds::velocity, "velocity",
+                     motion_ == Motion::balanced ? ChannelPhase::flow : ChannelPhase::state);
 }
 
 void Piston::start(Event& e) {
@@ -244,12 +301,18 @@ void Piston::start(Event& e) {
   if (motion_ == Motion::driven) return;
   const double net = net_force(w), held = friction_.breakaway;
   const bool moves = motion_ == Motion::inertial && start_velocity_ != 0.0;
-  if (moves) mode_ = has_static_friction() ? (start_velocity_ > 0.0 ? Mode::outward : Mode::inward) : Mode::free;
-  else if (has_stops_ && x <= low_ + contact_slack_ && net <= held) mode_ = Mode::low_stop;
-  else if (has_stops_ && x >= high_ - contact_slack_ && net >= -held) mode_ = Mode::high_stop;
-  else if (!has_static_friction()) mode_ = Mode::free;
-  else if (std::abs(net) <= held) mode_ = Mode::stuck;
-  else mode_ = net > 0.0 ? Mode::outward : Mode::inward;
+  if (moves)
+    mode_ = has_static_friction() ? (start_velocity_ > 0.0 ? Mode::outward : Mode::inward) : Mode::free;
+  else if (has_stops_ && x <= low_ + contact_slack_ && net <= held)
+    mode_ = Mode::low_stop;
+  else if (has_stops_ && x >= high_ - contact_slack_ && net >= -held)
+    mode_ = Mode::high_stop;
+  else if (!has_static_friction())
+    mode_ = Mode::free;
+  else if (std::abs(net) <= held)
+    mode_ = Mode::stuck;
+  else
+    mode_ = net > 0.0 ? Mode::outward : Mode::inward;
   kinetic_at_start_ = kinetic_energy(w);
 }
 
@@ -259,8 +322,10 @@ void Piston::guards(const Workspace<double>& w, double* g) const {
   if (motion_ == Motion::driven) {
     if (!driven_by_flow_ || !has_stops_) return;
     const double push = -w.input[flow_input_];
-    if (mode_ == Mode::low_stop) g[3] = push;
-    else if (mode_ == Mode::high_stop) g[4] = -push;
+    if (mode_ == Mode::low_stop)
+      g[3] = push;
+    else if (mode_ == Mode::high_stop)
+      g[4] = -push;
     else {
       g[0] = low_ - x - contact_slack_;
       g[1] = x - high_ - contact_slack_;
@@ -306,9 +371,14 @@ void Piston::collide(bool low, Event& e) {
   e.book(impact_entry_, lost);
   e.generate(Mechanism::impact, lost / w.ambient_temperature);
   e.carry_entropy(-lost / w.ambient_temperature);
-  if (after == 0.0) lie_on(stop, e);
-  else if (has_static_friction()) mode_ = low ? Mode::outward : Mode::inward;
-  e.log(name, after == 0.0 ? (low ? "comes to rest on low stop" : "comes to rest on high stop") : (low ? "hits low stop" : "hits high stop"), before, after);
+  if (after == 0.0)
+    lie_on(stop, e);
+  else if (has_static_friction())
+    mode_ = low ? Mode::outward : Mode::inward;
+  e.log(name,
+        after == 0.0 ? (low ? "comes to rest on low stop" : "comes to rest on high stop")
+                     : (low ? "hits low stop" : "hits high stop"),
+        before, after);
 }
 
 void Piston::come_to_rest(Event& e) {
@@ -335,8 +405,12 @@ void Piston::on_guard(int which, Event& e) {
     return;
   }
   const bool from_stop = mode_ == Mode::low_stop || mode_ == Mode::high_stop;
-  mode_ = !has_static_friction() || motion_ == Motion::driven ? Mode::free : (which == 3 ? Mode::outward : Mode::inward);
-  e.log(name, from_stop ? (which == 3 ? "leaves low stop" : "leaves high stop") : (which == 3 ? "slips outward" : "slips inward"), 0.0, 0.0);
+  mode_ =
+      !has_static_friction() || motion_ == Motion::driven ? Mode::free : (which == 3 ? Mode::outward : Mode::inward);
+  e.log(name,
+        from_stop ? (which == 3 ? "leaves low stop" : "leaves high stop")
+                  : (which == 3 ? "slips outward" : "slips inward"),
+        0.0, 0.0);
 }
 
 void Piston::on_inputs_changed(Event& e) {
@@ -364,9 +438,12 @@ void Piston::on_inputs_changed(Event& e) {
   if (!has_static_friction()) return;
   const double net = net_force(w);
   if (std::abs(net - direction() * friction_.kinetic) < 1e-9 * w.gas[space_].pressure * area_) return;
-  if (net > friction_.breakaway) mode_ = Mode::outward;
-  else if (net < -friction_.breakaway) mode_ = Mode::inward;
-  else mode_ = Mode::stuck;
+  if (net > friction_.breakaway)
+    mode_ = Mode::outward;
+  else if (net < -friction_.breakaway)
+    mode_ = Mode::inward;
+  else
+    mode_ = Mode::stuck;
 }
 
 double Piston::kinetic_energy(const Workspace<double>& w) const {

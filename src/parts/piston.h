@@ -41,7 +41,8 @@ public:
   void connect(Layout& layout);
   void start(Event& e);
 
-  template <class S> void prepare(Workspace<S>& w) const {
+  template <class S>
+  void prepare(Workspace<S>& w) const {
     const S travel = this->travel(w);
     w.volume[space_] = w.volume[space_] + area_ * travel;
     if (back_space_ >= 0) w.volume[back_space_] = w.volume[back_space_] - back_area_ * travel;
@@ -53,10 +54,12 @@ public:
   }
 
   /// All pistons at once: those whose velocity is known first, then the balanced ones together.
-  template <class S> static void move_all(std::span<const Piston> pistons, Workspace<S>& w);
+  template <class S>
+  static void move_all(std::span<const Piston> pistons, Workspace<S>& w);
 
   int mode() const { return static_cast<int>(mode_); }
-  static constexpr std::array guard_names = {"reaches low stop", "reaches high stop", "comes to rest", "starts outward", "starts inward"};
+  static constexpr std::array guard_names = {"reaches low stop", "reaches high stop", "comes to rest", "starts outward",
+                                             "starts inward"};
   static constexpr bool guards_disturb = true;
   void guards(const Workspace<double>& w, double* g) const;
   void on_guard(int which, Event& e);
@@ -88,12 +91,14 @@ private:
   bool has_static_friction() const { return friction_.breakaway > 0.0 || friction_.kinetic > 0.0; }
   double direction() const { return mode_ == Mode::outward ? 1.0 : (mode_ == Mode::inward ? -1.0 : 0.0); }
 
-  template <class S> S travel(const Workspace<S>& w) const {
+  template <class S>
+  S travel(const Workspace<S>& w) const {
     if (motion_ == Motion::driven && !driven_by_flow_) return w.input[position_input_] - at_;
     return S(w.y[position_state_]);
   }
   /// Known before the forces are: zero for balanced pistons.
-  template <class S> S velocity(const Workspace<S>& w) const {
+  template <class S>
+  S velocity(const Workspace<S>& w) const {
     if (motion_ == Motion::inertial) return moving() ? S(w.y[velocity_state_]) : S(0.0);
     if (motion_ == Motion::driven) {
       if (!driven_by_flow_) return w.slope_of_input(position_input_);
@@ -101,22 +106,37 @@ private:
     }
     return S(0.0);
   }
-  template <class S> S back_pressure(const Workspace<S>& w) const {
+  template <class S>
+  S back_pressure(const Workspace<S>& w) const {
     if (back_space_ >= 0) return w.gas[back_space_].pressure;
     return back_input_ >= 0 ? w.input[back_input_] : S(w.layout->atmosphere_pressure);
   }
   /// Outward forces less opposing ones, friction left out.
-  template <class S> S net_force(const Workspace<S>& w) const { return w.gas[space_].pressure * area_ - opposing_force(w); }
-  template <class S> S opposing_force(const Workspace<S>& w) const {
+  template <class S>
+  S net_force(const Workspace<S>& w) const {
+    return w.gas[space_].pressure * area_ - opposing_force(w);
+  }
+  template <class S>
+  S opposing_force(const Workspace<S>& w) const {
     return back_pressure(w) * back_area_ + weight(w) + spring_force(w) + w.input[force_input_];
   }
-  template <class S> S weight(const Workspace<S>& w) const { return w.input[mass_input_] * gravity_; }
-  template <class S> S spring_force(const Workspace<S>& w) const { return stiffness_ * (w.out[channel_] - free_at_); }
+  template <class S>
+  S weight(const Workspace<S>& w) const {
+    return w.input[mass_input_] * gravity_;
+  }
+  template <class S>
+  S spring_force(const Workspace<S>& w) const {
+    return stiffness_ * (w.out[channel_] - free_at_);
+  }
 
-  template <class S> void move_known(Workspace<S>& w) const;
-  template <class S> void book_work(Workspace<S>& w, const S& v, const S& friction_force) const;
-  template <class S> static void move_balanced(std::span<const Piston> pistons, Workspace<S>& w);
-  template <class S> void move_viscous(Workspace<S>& w) const;
+  template <class S>
+  void move_known(Workspace<S>& w) const;
+  template <class S>
+  void book_work(Workspace<S>& w, const S& v, const S& friction_force) const;
+  template <class S>
+  static void move_balanced(std::span<const Piston> pistons, Workspace<S>& w);
+  template <class S>
+  void move_viscous(Workspace<S>& w) const;
   void read_friction(Section& s);
   void read_back(Section& s);
   void check(Section& s);

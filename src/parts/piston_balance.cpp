@@ -7,10 +7,10 @@
 /// After a step this removes rounding and integration drift; after a sudden change of
 /// load it is the jump to the new balance (or the stop) at the new forces, and what the
 /// gas loses less than reversibly shows as entropy of the mechanism `sudden`.
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
-
-#include <fmt/format.h>
 
 #include "parts/piston.h"
 
@@ -86,19 +86,25 @@ public:
   double shift(std::size_t i) const { return shift_[i]; }
 
 private:
-  double back_pressure(const Piston& p) const { return p.back_space_ >= 0 ? gas_[p.back_space_].pressure : p.back_pressure(w_); }
+  double back_pressure(const Piston& p) const {
+    return p.back_space_ >= 0 ? gas_[p.back_space_].pressure : p.back_pressure(w_);
+  }
   double friction(const Piston& p) const { return p.direction() * p.friction_.kinetic; }
-  double spring_at(const Piston& p, double shift) const { return p.stiffness_ * (w_.out[p.channel_] + shift - p.free_at_); }
+  double spring_at(const Piston& p, double shift) const {
+    return p.stiffness_ * (w_.out[p.channel_] + shift - p.free_at_);
+  }
   double constant_force(const Piston& p) const { return p.weight(w_) + w_.input[p.force_input_]; }
   std::size_t index(const Piston& p) const { return static_cast<std::size_t>(&p - pistons_.data()); }
 
   double residual(const Piston& p) const {
-    return gas_[p.space_].pressure * p.area_ - back_pressure(p) * p.back_area_ - constant_force(p) - spring_at(p, shift_[index(p)]) - friction(p);
+    return gas_[p.space_].pressure * p.area_ - back_pressure(p) * p.back_area_ - constant_force(p) -
+           spring_at(p, shift_[index(p)]) - friction(p);
   }
   /// -d(residual)/dx of this piston alone.
   double stiffness(const Piston& p) const {
     const auto one = [&](int space, double area, double force) {
-      const PressureSlopes<double> s = event_.layout->mixture.pressure_slopes(gas_[space], w_.space_mass(space), volume_[space]);
+      const PressureSlopes<double> s =
+          event_.layout->mixture.pressure_slopes(gas_[space], w_.space_mass(space), volume_[space]);
       return area * (s.by_energy * force - s.by_volume * area);
     };
     double k = p.stiffness_ + one(p.space_, p.area_, gas_[p.space_].pressure * p.area_);
@@ -136,7 +142,8 @@ private:
 
   void refresh(int space) {
     const double energy = event_.layout->spaces[space].energy + departure_[space];
-    gas_[space] = event_.layout->mixture.from_energy(w_.space_mass(space), energy, volume_[space], gas_[space].temperature);
+    gas_[space] =
+        event_.layout->mixture.from_energy(w_.space_mass(space), energy, volume_[space], gas_[space].temperature);
   }
 
   /// Ledger entries of a shift; returns the entropy that friction heat put into the gas.
@@ -166,7 +173,8 @@ private:
   std::span<Piston> pistons_;
   Event& event_;
   const Workspace<double>& w_;
-  std::vector<double> volume_, departure_, shift_;  // departure: of energy from the start, exact however large the energy
+  std::vector<double> volume_, departure_,
+      shift_;  // departure: of energy from the start, exact however large the energy
   std::vector<GasState<double>> gas_;
   std::vector<std::size_t> stopped_;
 };
@@ -196,7 +204,8 @@ bool Piston::settle_all(std::span<Piston> pistons, Event& e, bool sudden) {
   for (std::size_t i = 0; jump && i < pistons.size(); ++i) {
     if (std::abs(balance.shift(i)) <= 1e-9 * (e.layout->spaces[pistons[i].space_].volume / pistons[i].area_)) continue;
     const bool stopped = pistons[i].mode_ != modes[i];
-    e.log(pistons[i].name, stopped ? "jumps to its stop" : "jumps to its new balance", position[i], position[i] + balance.shift(i));
+    e.log(pistons[i].name, stopped ? "jumps to its stop" : "jumps to its new balance", position[i],
+          position[i] + balance.shift(i));
   }
   return true;
 }

@@ -5,7 +5,8 @@
 namespace gaskettle {
 
 /// Books the work done by the gas at velocity v, term by term, and where friction heat goes.
-template <class S> void Piston::book_work(Workspace<S>& w, const S& v, const S& friction_force) const {
+template <class S>
+void Piston::book_work(Workspace<S>& w, const S& v, const S& friction_force) const {
   w.book(lifting_entry_, weight(w) * v);
   if (stiffness_ > 0.0) w.book(spring_entry_, spring_force(w) * v);
   if (atmosphere_entry_ >= 0) w.book(atmosphere_entry_, back_pressure(w) * back_area_ * v);
@@ -24,7 +25,8 @@ template <class S> void Piston::book_work(Workspace<S>& w, const S& v, const S& 
 }
 
 /// Inertial and driven pistons: the velocity is a state or an input.
-template <class S> void Piston::move_known(Workspace<S>& w) const {
+template <class S>
+void Piston::move_known(Workspace<S>& w) const {
   const S v = w.out[channel_ + 1];
   const S pressure = w.gas[space_].pressure;
   w.power[space_store_] = w.power[space_store_] - pressure * area_ * v;
@@ -56,7 +58,8 @@ template <class S> void Piston::move_known(Workspace<S>& w) const {
 }
 
 /// Balanced with viscous friction: b v = net - kinetic.
-template <class S> void Piston::move_viscous(Workspace<S>& w) const {
+template <class S>
+void Piston::move_viscous(Workspace<S>& w) const {
   if (!moving()) return;
   const S net = net_force(w);
   const S v = (net - direction() * friction_.kinetic) / friction_.viscous;
@@ -75,12 +78,15 @@ template <class S> void Piston::move_viscous(Workspace<S>& w) const {
 ///   A dp/dt - A_b dp_b/dt = dF/dt + k dx/dt
 /// where each dp/dt has a part from everything else (heat, flows, other pistons) and a
 /// part from every balanced piston that touches the space. A small linear system.
-template <class S> void Piston::move_balanced(std::span<const Piston> pistons, Workspace<S>& w) {
+template <class S>
+void Piston::move_balanced(std::span<const Piston> pistons, Workspace<S>& w) {
   const std::size_t n = pistons.size();
   S* const matrix = w.scratch.data();
   S* const right = matrix + n * n;
   const GasMixture& mixture = w.layout->mixture;
-  const auto slopes = [&](int space) { return mixture.pressure_slopes(w.gas[space], w.space_mass(space), w.volume[space]); };
+  const auto slopes = [&](int space) {
+    return mixture.pressure_slopes(w.gas[space], w.space_mass(space), w.volume[space]);
+  };
   // dp/dt of a space from everything but balanced pistons.
   const auto drift = [&](int space, const PressureSlopes<S>& slope) {
     S rate = slope.by_energy * w.power[w.layout->spaces[space].store] + slope.by_volume * w.volume_rate[space];
@@ -114,8 +120,8 @@ template <class S> void Piston::move_balanced(std::span<const Piston> pistons, W
       for (std::size_t j = 0; j < n; ++j) {
         const Piston& q = pistons[j];
         if (!q.follows_balance() || (q.space_ != space && q.back_space_ != space)) continue;
-        matrix[i * n + j] = matrix[i * n + j] -
-                            area * (slope.by_energy * energy_per_travel(q, space) + slope.by_volume * volume_per_travel(q, space));
+        matrix[i * n + j] = matrix[i * n + j] - area * (slope.by_energy * energy_per_travel(q, space) +
+                                                        slope.by_volume * volume_per_travel(q, space));
       }
     }
     right[i] = push;
@@ -130,7 +136,8 @@ template <class S> void Piston::move_balanced(std::span<const Piston> pistons, W
     }
   for (std::size_t i = n; i-- > 0;) {
     for (std::size_t j = i + 1; j < n; ++j)
-      if (pistons[i].follows_balance() && pistons[j].follows_balance()) right[i] = right[i] - matrix[i * n + j] * right[j];
+      if (pistons[i].follows_balance() && pistons[j].follows_balance())
+        right[i] = right[i] - matrix[i * n + j] * right[j];
     right[i] = right[i] / matrix[i * n + i];
   }
   for (std::size_t i = 0; i < n; ++i) {
@@ -146,12 +153,16 @@ template <class S> void Piston::move_balanced(std::span<const Piston> pistons, W
   }
 }
 
-template <class S> void Piston::move_all(std::span<const Piston> pistons, Workspace<S>& w) {
+template <class S>
+void Piston::move_all(std::span<const Piston> pistons, Workspace<S>& w) {
   bool any_balanced = false;
   for (const Piston& p : pistons) {
-    if (p.motion_ != Motion::balanced) p.move_known(w);
-    else if (p.friction_.viscous > 0.0) p.move_viscous(w);
-    else any_balanced = any_balanced || p.follows_balance();
+    if (p.motion_ != Motion::balanced)
+      p.move_known(w);
+    else if (p.friction_.viscous > 0.0)
+      p.move_viscous(w);
+    else
+      any_balanced = any_balanced || p.follows_balance();
   }
   if (any_balanced) move_balanced(pistons, w);
 }

@@ -1,8 +1,8 @@
 #include "parts/port.h"
 
-#include <numbers>
-
 #include <fmt/format.h>
+
+#include <numbers>
 
 namespace gaskettle {
 
@@ -15,16 +15,21 @@ void Port::read_way(Section& s) {
     double area = 0.0;
     if (const auto bore = orifice->optional_quantity("bore", unit_kinds::length, "of a round opening", Range::positive))
       area = std::numbers::pi / 4.0 * bore->si * bore->si;
-    if (const auto a = orifice->optional_quantity("area", unit_kinds::area, "of the opening", Range::positive)) area = *a;
-    const Value cd = orifice->quantity("discharge_coefficient", unit_kinds::number, "of the opening, 0 to 1", Range::fraction);
-    if (cd.given && cd.si == 0.0) orifice->error("discharge_coefficient", "a discharge coefficient of 0 lets nothing through; it lies between 0 and 1");
+    if (const auto a = orifice->optional_quantity("area", unit_kinds::area, "of the opening", Range::positive))
+      area = *a;
+    const Value cd =
+        orifice->quantity("discharge_coefficient", unit_kinds::number, "of the opening, 0 to 1", Range::fraction);
+    if (cd.given && cd.si == 0.0)
+      orifice->error("discharge_coefficient",
+                     "a discharge coefficient of 0 lets nothing through; it lies between 0 and 1");
     scale_ = cd.si * area;
   }
   if (auto sonic = s.child("iso6358", "a component rated by ISO 6358")) {
     way_ = Way::sonic;
     scale_ = 1.0;
     conductance_ = sonic->quantity("C", unit_kinds::sonic_conductance, "sonic conductance, at ANR", Range::positive);
-    critical_ratio_ = sonic->quantity("b", unit_kinds::number, "critical pressure ratio, from 0 to below 1", Range::fraction);
+    critical_ratio_ =
+        sonic->quantity("b", unit_kinds::number, "critical pressure ratio, from 0 to below 1", Range::fraction);
     if (critical_ratio_ >= 1.0 && !s.describing()) {
       sonic->error("b", "the critical pressure ratio b must be below 1");
       critical_ratio_ = 0.5;
@@ -65,7 +70,8 @@ void Port::connect(Layout& layout) {
   layout.inputs[opening_input_].high = 1.0;
   if (way_ == Way::stated) flow_input_ = layout.add_input(name + ".flow", unit_kinds::gas_flow, flow_spec_, 0.0, place);
   entries_.connect(layout, name, from_, to_);
-  channel_ = layout.add_channel(name + ".flow", unit_kinds::gas_flow, "mass flow, positive from 'from' to 'to'", ChannelPhase::flow);
+  channel_ = layout.add_channel(name + ".flow", unit_kinds::gas_flow, "mass flow, positive from 'from' to 'to'",
+                                ChannelPhase::flow);
   layout.add_channel(name + ".opening", unit_kinds::number, "0 shut to 1 open", ChannelPhase::flow);
 }
 
@@ -74,7 +80,8 @@ void Port::start(Event& e) {
   running_ = from_.pressure(*e.before) > to_.pressure(*e.before);
   if (!running_) {
     e.log(name, "stated flow needs a pump", 0.0, 0.0);
-    e.layout->warnings.push_back(fmt::format("{}: its source does not exceed its sink at the start; the stated flow needs a pump and does not run", name));
+    e.layout->warnings.push_back(fmt::format(
+        "{}: its source does not exceed its sink at the start; the stated flow needs a pump and does not run", name));
   }
 }
 

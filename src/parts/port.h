@@ -28,14 +28,21 @@ public:
   void connect(Layout& layout);
   void start(Event& e);
 
-  template <class S> void exchange(Workspace<S>& w) const {
+  template <class S>
+  void exchange(Workspace<S>& w) const {
     const GasState<S> a = from_.state(w), b = to_.state(w);
     const S& opening = w.input[opening_input_];
     TwoWayFlow<S> flow{S(0.0), S(0.0)};
     switch (way_) {
-      case Way::orifice: flow = nozzle_flux_both_ways(side(a), side(b), w.band); break;
-      case Way::sonic: flow = sonic_flow(a, b, w.band); break;
-      case Way::stated: flow.forward = stated_flow(w, a); break;
+      case Way::orifice:
+        flow = nozzle_flux_both_ways(side(a), side(b), w.band);
+        break;
+      case Way::sonic:
+        flow = sonic_flow(a, b, w.band);
+        break;
+      case Way::stated:
+        flow.forward = stated_flow(w, a);
+        break;
     }
     const S forward = opening * scale_ * flow.forward;
     carry_flow(w, forward, from_, to_, a, entries_);
@@ -55,23 +62,29 @@ public:
 
 private:
   enum class Way { orifice, sonic, stated };
-  template <class S> static NozzleSide<S> side(const GasState<S>& g) {
+  template <class S>
+  static NozzleSide<S> side(const GasState<S>& g) {
     return {g.pressure, g.temperature, g.gas_constant, heat_capacity_ratio(g)};
   }
-  template <class S> TwoWayFlow<S> sonic_flow(const GasState<S>& a, const GasState<S>& b, double band) const {
+  template <class S>
+  TwoWayFlow<S> sonic_flow(const GasState<S>& a, const GasState<S>& b, double band) const {
     const auto one = [&](const GasState<S>& up, const GasState<S>& down) {
       return S(iso6358_gas_factor(up.gas_constant, heat_capacity_ratio(up)) *
                iso6358_flow(up.pressure, up.temperature, down.pressure, conductance_, critical_ratio_, band));
     };
     return {one(a, b), value(a.pressure) >= value(b.pressure) ? S(0.0 * one(b, a)) : one(b, a)};
   }
-  template <class S> S stated_flow(const Workspace<S>& w, const GasState<S>& up) const {
+  template <class S>
+  S stated_flow(const Workspace<S>& w, const GasState<S>& up) const {
     if (!running_) return S(0.0);
     const S& stated = w.input[flow_input_];
     switch (basis_) {
-      case FlowBasis::mass: return stated;
-      case FlowBasis::molar: return stated * (molar_gas_constant / up.gas_constant);
-      case FlowBasis::actual_volume: return stated * up.density;
+      case FlowBasis::mass:
+        return stated;
+      case FlowBasis::molar:
+        return stated * (molar_gas_constant / up.gas_constant);
+      case FlowBasis::actual_volume:
+        return stated * up.density;
     }
     return stated;
   }

@@ -27,7 +27,8 @@ public:
   void connect(Layout& layout);
   void start(Event& e);
 
-  template <class S> void exchange(Workspace<S>& w) const {
+  template <class S>
+  void exchange(Workspace<S>& w) const {
     S opening = S(opening_ == Opening::full ? 1.0 : 0.0);
     if (opening_ == Opening::lifting) opening = (driving_pressure(w) - set_) / lift_range_;
     w.out[channel_] = S(0.0);
@@ -35,7 +36,9 @@ public:
     w.out[channel_ + 2] = w.y[released_state_];
     if (opening_ == Opening::shut) return;
     const GasState<S> up = from_.state(w), down = to_.state(w);
-    const auto side = [](const GasState<S>& g) { return NozzleSide<S>{g.pressure, g.temperature, g.gas_constant, heat_capacity_ratio(g)}; };
+    const auto side = [](const GasState<S>& g) {
+      return NozzleSide<S>{g.pressure, g.temperature, g.gas_constant, heat_capacity_ratio(g)};
+    };
     const TwoWayFlow<S> flux = nozzle_flux_both_ways(side(up), side(down), w.band);
     const S forward = opening * effective_area_ * flux.forward;
     carry_flow(w, forward, from_, to_, up, entries_);
@@ -56,7 +59,8 @@ public:
 private:
   enum class Opening { shut, lifting, full };
   /// What the device compares with its set pressure: Pa above the surroundings.
-  template <class S> S driving_pressure(const Workspace<S>& w) const {
+  template <class S>
+  S driving_pressure(const Workspace<S>& w) const {
     const S inlet = from_.pressure(w);
     if (balanced_ || disc_ || !to_.is_space()) return inlet - w.layout->atmosphere_pressure;
     return inlet - to_.pressure(w);

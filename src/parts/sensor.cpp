@@ -1,14 +1,16 @@
 #include "parts/sensor.h"
 
-#include <algorithm>
-
 #include <fmt/format.h>
+
+#include <algorithm>
 
 namespace gaskettle {
 
 void Sensor::read(Section& s) {
   reads_ = s.reference("reads", "channel", "what it measures, such as chamber.temperature", true);
-  if (const auto tau = s.optional_quantity("time_constant", unit_kinds::time, "of the first-order lag; starts at the true value", Range::positive)) time_constant_ = *tau;
+  if (const auto tau = s.optional_quantity("time_constant", unit_kinds::time,
+                                           "of the first-order lag; starts at the true value", Range::positive))
+    time_constant_ = *tau;
   // What unit these carry depends on the channel, which is known only when all parts are connected.
   offset_node_ = s.raw("offset", "difference in the channel's unit", "added to the reading", false);
   range_node_ = s.raw("range", "[low, high] in the channel's unit", "the reading stays within it", false);
@@ -24,19 +26,23 @@ void Sensor::connect(Layout& layout) {
   if (channel_read_ < 0) return;
   const ChannelDoc read = layout.channels[channel_read_];
   if (read.phase == ChannelPhase::observed) {
-    layout.error(reads_.place, fmt::format("'{}' is worked out for the record only; a sensor can read temperatures, pressures, volumes, masses, positions, flows and powers", reads_.name));
+    layout.error(reads_.place, fmt::format("'{}' is worked out for the record only; a sensor can read temperatures, "
+                                           "pressures, volumes, masses, positions, flows and powers",
+                                           reads_.name));
     return;
   }
   late_ = read.phase == ChannelPhase::flow;
   if (offset_node_ != nullptr)
-    if (const auto v = read_value(*context_, *offset_node_, path_ + ".offset", difference_kind(read.kind), Range::any)) offset_ = *v;
+    if (const auto v = read_value(*context_, *offset_node_, path_ + ".offset", difference_kind(read.kind), Range::any))
+      offset_ = *v;
   if (range_node_ != nullptr) {
     if (!range_node_->is_list() || range_node_->items.size() != 2) {
       layout.error(range_node_->place, fmt::format("'{}.range' should be [low, high]", path_));
     } else {
       const auto low = read_value(*context_, range_node_->items[0], path_ + ".range", read.kind, Range::any);
       const auto high = read_value(*context_, range_node_->items[1], path_ + ".range", read.kind, Range::any);
-      if (low && high && low->si >= high->si) layout.error(range_node_->place, fmt::format("'{}.range' must rise", path_));
+      if (low && high && low->si >= high->si)
+        layout.error(range_node_->place, fmt::format("'{}.range' must rise", path_));
       if (low && high) {
         low_ = *low;
         high_ = *high;
@@ -45,10 +51,13 @@ void Sensor::connect(Layout& layout) {
     }
   }
   if (time_constant_ > 0.0) {
-    const double typical = read.kind.flavour == UnitFlavour::temperature ? 100.0 : (read.kind.flavour == UnitFlavour::pressure ? layout.atmosphere_pressure : 1.0);
+    const double typical = read.kind.flavour == UnitFlavour::temperature
+                               ? 100.0
+                               : (read.kind.flavour == UnitFlavour::pressure ? layout.atmosphere_pressure : 1.0);
     state_ = layout.add_state(name + ".lagged", typical);
   }
-  channel_ = layout.add_channel(name + ".reading", read.kind, "reading of " + reads_.name, time_constant_ > 0.0 || !late_ ? ChannelPhase::state : ChannelPhase::flow, read.unit);
+  channel_ = layout.add_channel(name + ".reading", read.kind, "reading of " + reads_.name,
+                                time_constant_ > 0.0 || !late_ ? ChannelPhase::state : ChannelPhase::flow, read.unit);
 }
 
 void Sensor::start(Event& e) {

@@ -23,16 +23,20 @@ public:
   void connect(Layout& layout);
   void start(Event& e);
 
-  template <class S> void sense(Workspace<S>& w) const {
+  template <class S>
+  void sense(Workspace<S>& w) const {
     const S raw = (state_ >= 0 ? S(w.y[state_]) : w.out[channel_read_]) + offset_;
     S reading = raw;
     if (clip_ == Clip::low) reading = S(low_ + 0.0 * raw);
     if (clip_ == Clip::high) reading = S(high_ + 0.0 * raw);
     w.out[channel_] = reading;
   }
-  template <class S> void finish(Workspace<S>& w) const {
-    if (state_ >= 0) w.f[state_] = (w.out[channel_read_] - w.y[state_]) / time_constant_;
-    else if (late_) sense(w);
+  template <class S>
+  void finish(Workspace<S>& w) const {
+    if (state_ >= 0)
+      w.f[state_] = (w.out[channel_read_] - w.y[state_]) / time_constant_;
+    else if (late_)
+      sense(w);
   }
 
   int mode() const { return static_cast<int>(clip_); }

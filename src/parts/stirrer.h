@@ -26,10 +26,13 @@ public:
   void declare(Layout& layout);
   void connect(Layout& layout);
 
-  template <class S> void exchange(Workspace<S>& w) const {
+  template <class S>
+  void exchange(Workspace<S>& w) const {
     S power = S(0.0), torque = S(0.0), speed = S(0.0);
     switch (way_) {
-      case Way::power: power = w.input[power_input_]; break;
+      case Way::power:
+        power = w.input[power_input_];
+        break;
       case Way::torque:
         torque = w.input[torque_input_];
         speed = w.input[speed_input_];
@@ -51,7 +54,8 @@ public:
 
 private:
   enum class Way { power, torque, impeller };
-  template <class S> static S impeller_torque(const S& power, const S& speed) {
+  template <class S>
+  static S impeller_torque(const S& power, const S& speed) {
     if (absolute(value(speed)) < 1e-9) return 0.0 * (power + speed);
     return power / speed;
   }

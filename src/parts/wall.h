@@ -32,14 +32,16 @@ public:
   void declare(Layout& layout);
   void connect(Layout& layout);
 
-  template <class S> void prepare(Workspace<S>& w) const {
+  template <class S>
+  void prepare(Workspace<S>& w) const {
     for (std::size_t i = 0; i < store_.size(); ++i)
       w.temperature[store_[i]] = start_ + w.y[state_[i]] * inverse_capacity_[i];
     w.out[channel_] = w.temperature[store_.front()];
     w.out[channel_ + 1] = w.temperature[store_.back()];
   }
 
-  template <class S> void exchange(Workspace<S>& w) const {
+  template <class S>
+  void exchange(Workspace<S>& w) const {
     const S inner_area = area_ + area_per_volume_ * (w.volume[space_] - volume_start_);
     inside_.exchange(w, space_, store_.front(), inner_area);
     conduct(w);
@@ -56,7 +58,8 @@ private:
     double conductance;
   };
 
-  template <class S> void conduct(Workspace<S>& w) const {
+  template <class S>
+  void conduct(Workspace<S>& w) const {
     for (std::size_t i = 0; i < link_.size(); ++i) {
       const S& a = w.temperature[store_[i]];
       const S& b = w.temperature[store_[i + 1]];
@@ -66,10 +69,12 @@ private:
       w.heat(store_[i], store_[i + 1], q, Mechanism::conduction);
     }
     if (bridges_ > 0.0 && store_.size() > 1)
-      w.heat(store_.front(), store_.back(), bridges_ * (w.temperature[store_.front()] - w.temperature[store_.back()]), Mechanism::conduction);
+      w.heat(store_.front(), store_.back(), bridges_ * (w.temperature[store_.front()] - w.temperature[store_.back()]),
+             Mechanism::conduction);
   }
 
-  template <class S> void lose(Workspace<S>& w) const {
+  template <class S>
+  void lose(Workspace<S>& w) const {
     const int face = store_.back();
     const S& here = w.temperature[face];
     const S there = facing_input_ >= 0 ? w.input[facing_input_] : w.ambient_temperature;
@@ -97,7 +102,8 @@ private:
   FilmUse inside_, outside_;
   SignalSpec facing_spec_, flux_spec_;
 
-  int space_ = 0, other_space_ = -1, channel_ = 0, loss_entry_ = 0, flux_entry_ = 0, facing_input_ = -1, flux_input_ = -1;
+  int space_ = 0, other_space_ = -1, channel_ = 0, loss_entry_ = 0, flux_entry_ = 0, facing_input_ = -1,
+      flux_input_ = -1;
   double area_ = 0.0, outer_area_ = 0.0, area_per_volume_ = 0.0, volume_start_ = 0.0, start_ = 0.0;
   std::vector<int> store_, state_;
   std::vector<double> inverse_capacity_;

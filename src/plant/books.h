@@ -10,21 +10,21 @@ namespace gaskettle {
 
 /// A quadrature of the ledger beside the state function it should equal.
 struct WorkComparison {
-  std::string what;           ///< "kinetic energy of ram"
+  std::string what;                  ///< "kinetic energy of ram"
   double ledger = 0.0, state = 0.0;  ///< J
-  double scale = 0.0;         ///< J, what the difference is judged by
+  double scale = 0.0;                ///< J, what the difference is judged by
   double difference() const { return ledger - state; }
 };
 
 struct Books {
-  std::array<double, ledger_term_count> term{};  ///< J, by LedgerTerm
-  double boundary_work = 0.0, stored = 0.0;      ///< J
-  double throughput = 0.0;       ///< J
-  double closure_energy = 0.0;   ///< |residual| / throughput
+  std::array<double, ledger_term_count> term{};        ///< J, by LedgerTerm
+  double boundary_work = 0.0, stored = 0.0;            ///< J
+  double throughput = 0.0;                             ///< J
+  double closure_energy = 0.0;                         ///< |residual| / throughput
   std::vector<double> mass_in, mass_out, mass_change;  ///< kg, per species
-  double closure_mass = 0.0;     ///< the worst species
-  std::array<double, mechanism_count> entropy{};  ///< J/K generated, by Mechanism, mixing completed
-  double generated = 0.0;        ///< J/K
+  double closure_mass = 0.0;                           ///< the worst species
+  std::array<double, mechanism_count> entropy{};       ///< J/K generated, by Mechanism, mixing completed
+  double generated = 0.0;                              ///< J/K
   double entropy_change = 0.0, entropy_carried = 0.0;  ///< J/K, of all stores; net across the boundary
   std::vector<WorkComparison> work;
 

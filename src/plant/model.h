@@ -17,8 +17,8 @@ struct RunSettings {
   double record_every = 0.0;  ///< s
   double rtol = 1e-8;
   Method method = Method::automatic;
-  Reference stop_when;        ///< a target
-  std::string time_unit;      ///< how `until` was written
+  Reference stop_when;    ///< a target
+  std::string time_unit;  ///< how `until` was written
 };
 
 /// What a target or limit says, before channels are known.

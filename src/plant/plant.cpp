@@ -1,10 +1,10 @@
 #include "plant/plant.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
 #include <limits>
-
-#include <fmt/format.h>
 
 #include "plant/evaluate.h"
 #include "solve/colouring.h"
@@ -15,7 +15,8 @@ namespace {
 constexpr double infinity = std::numeric_limits<double>::infinity();
 }
 
-Plant::Plant(Model model, ReadContext& context) : model_(std::move(model)), layout_(context.problems, context.atmosphere) {
+Plant::Plant(Model model, ReadContext& context)
+    : model_(std::move(model)), layout_(context.problems, context.atmosphere) {
   lay_out(context);
 }
 
@@ -23,7 +24,8 @@ Plant::~Plant() = default;
 
 /// One step of laying out one part. Who stumbles over a mistake is noted as unsound, so that those who refer to it
 /// are not blamed in turn; and an exception after a reported problem is only its echo.
-template <class Part, class Step> void Plant::attempt(const Part& part, Step&& step) {
+template <class Part, class Step>
+void Plant::attempt(const Part& part, Step&& step) {
   const std::size_t before = layout_.troubles();
   bool failed = false;
   try {
@@ -61,7 +63,8 @@ void Plant::lay_out(ReadContext& context) {
 }
 
 void Plant::claim_books() {
-  for (const char* m : mechanism_names) layout_.entropy_state.push_back(layout_.add_state(std::string("entropy.") + m, 0.0));
+  for (const char* m : mechanism_names)
+    layout_.entropy_state.push_back(layout_.add_state(std::string("entropy.") + m, 0.0));
   layout_.entropy_transfer_state = layout_.add_state("entropy.transfer", 0.0);
   layout_.throughput_state = layout_.add_state("energy.throughput", infinity);
   const int species = layout_.mixture.count();
@@ -126,7 +129,9 @@ void Plant::rates(double t, const double* y, double* f) { evaluate(model_.parts,
 
 bool Plant::admissible(double t, const double* y) {
   begin_evaluation(work_, t, y, scratch_rates_.data());
-  for_each_part(model_.parts, [&](const auto& p) { if constexpr (requires { p.prepare(work_); }) p.prepare(work_); });
+  for_each_part(model_.parts, [&](const auto& p) {
+    if constexpr (requires { p.prepare(work_); }) p.prepare(work_);
+  });
   for (const SpaceInfo& s : layout_.spaces) {
     if (!(work_.volume[s.index] > 0.0)) return false;
     const double total = work_.total_mass(s.index);
@@ -141,7 +146,9 @@ bool Plant::admissible(double t, const double* y) {
 
 std::vector<int> Plant::modes() const {
   std::vector<int> list;
-  for_each_part(model_.parts, [&](const auto& p) { if constexpr (requires { p.mode(); }) list.push_back(p.mode()); });
+  for_each_part(model_.parts, [&](const auto& p) {
+    if constexpr (requires { p.mode(); }) list.push_back(p.mode());
+  });
   return list;
 }
 

@@ -78,7 +78,8 @@ private:
   static constexpr int lanes = 8;
 
   void lay_out(ReadContext& context);
-  template <class Part, class Step> void attempt(const Part& part, Step&& step);
+  template <class Part, class Step>
+  void attempt(const Part& part, Step&& step);
   void claim_books();
   void claim_guards();
   void size_states();

@@ -1,7 +1,7 @@
 /// What the plant does at events and after steps.
-#include <cmath>
-
 #include <fmt/format.h>
+
+#include <cmath>
 
 #include "plant/evaluate.h"
 #include "plant/plant.h"
@@ -61,7 +61,8 @@ std::vector<double> Plant::start() {
   last_y_ = y;
   current_ = nullptr;
   start_entropy_ = 0.0;
-  for (const SpaceInfo& s : layout_.spaces) start_entropy_ += before_.total_mass(s.index) * before_.gas[s.index].entropy;
+  for (const SpaceInfo& s : layout_.spaces)
+    start_entropy_ += before_.total_mass(s.index) * before_.gas[s.index].entropy;
   if (rates_of_change_wanted()) fill_rates_of_change(before_);
   watch_.start(before_);
   return y;
@@ -98,7 +99,9 @@ EventResult Plant::on_events(double t, double* y, const std::vector<int>& fired,
     }
     result.disturbed = corner;
     if (corner)
-      for_each_part(model_.parts, [&](auto& p) { if constexpr (requires { p.on_inputs_changed(e); }) p.on_inputs_changed(e); });
+      for_each_part(model_.parts, [&](auto& p) {
+        if constexpr (requires { p.on_inputs_changed(e); }) p.on_inputs_changed(e);
+      });
     watch_.on_time(t, e);
   }
   for (const int i : fired) {
@@ -107,7 +110,8 @@ EventResult Plant::on_events(double t, double* y, const std::vector<int>& fired,
   }
   if (result.disturbed) {
     for_each_kind(model_.parts, [&]<class Part>(std::vector<Part>& list) {
-      if constexpr (requires { Part::settle_all(std::span<Part>(list), e, true); }) Part::settle_all(std::span<Part>(list), e, true);
+      if constexpr (requires { Part::settle_all(std::span<Part>(list), e, true); })
+        Part::settle_all(std::span<Part>(list), e, true);
     });
     last_y_.assign(y, y + size());
     last_t_ = t;
@@ -124,7 +128,8 @@ bool Plant::after_step(double t, double* y) {
   bool changed = false;
   EventAtWork e(*this, t, y);
   for_each_kind(model_.parts, [&]<class Part>(std::vector<Part>& list) {
-    if constexpr (requires { Part::settle_all(std::span<Part>(list), e, false); }) changed = Part::settle_all(std::span<Part>(list), e, false) || changed;
+    if constexpr (requires { Part::settle_all(std::span<Part>(list), e, false); })
+      changed = Part::settle_all(std::span<Part>(list), e, false) || changed;
   });
   return changed;
 }

@@ -1,9 +1,9 @@
 #include "plant/watch.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
-
-#include <fmt/format.h>
 
 namespace gaskettle {
 
@@ -23,9 +23,11 @@ TargetKeys read_target(Section& s) {
   k.when = s.reference("when", "channel", "the quantity watched", true);
   k.one_kind = s.exactly_one_of({"reaches", "settles_within"});
   k.reaches = s.raw("reaches", "value in the channel's unit", "the first time it has this value", false);
-  k.direction = s.choice("direction", {"rising", "falling", "either"}, "in which direction it reaches the value", "either");
+  k.direction =
+      s.choice("direction", {"rising", "falling", "either"}, "in which direction it reaches the value", "either");
   k.after = s.reference("after", "target", "only after this one was reached", false);
-  k.within = s.raw("settles_within", "difference in the channel's unit", "half width of the band it must stay in", false);
+  k.within =
+      s.raw("settles_within", "difference in the channel's unit", "half width of the band it must stay in", false);
   k.of = s.raw("of", "value in the channel's unit", "middle of the band", false);
   k.duration = s.optional_quantity("for", unit_kinds::time, "how long it must stay", Range::positive);
   return k;
@@ -48,7 +50,9 @@ LimitKeys read_limit(Section& s) {
   k.below = s.raw("below", "value in the channel's unit", "it stays at or below this", false);
   k.above = s.raw("above", "value in the channel's unit", "it stays at or above this", false);
   k.design = s.raw("design", "pressure", "design pressure, with accumulation", false);
-  k.accumulation = s.optional_quantity("accumulation", unit_kinds::percentage, "allowed rise above design while relieving, percent of gauge design", Range::not_negative);
+  k.accumulation =
+      s.optional_quantity("accumulation", unit_kinds::percentage,
+                          "allowed rise above design while relieving, percent of gauge design", Range::not_negative);
   return k;
 }
 }  // namespace
@@ -75,7 +79,8 @@ void Watch::connect_target(const WatchSpec& spec, ReadContext& context, Layout& 
     }
     const std::string near = nearest_name(k.after.name, names);
     if (t.after < 0 && !layout.excuse(k.after.name))
-      layout.error(k.after.place, fmt::format("there is no target '{}' before this one{}", k.after.name, near.empty() ? "" : "; did you mean '" + near + "'?"));
+      layout.error(k.after.place, fmt::format("there is no target '{}' before this one{}", k.after.name,
+                                              near.empty() ? "" : "; did you mean '" + near + "'?"));
   }
   if (t.channel >= 0 && k.one_kind) {
     const UnitKind kind = layout.channels[t.channel].kind;
@@ -113,14 +118,17 @@ void Watch::connect_limit(const WatchSpec& spec, ReadContext& context, Layout& l
   l.channel = layout.channel(l.rate ? k.rate_of : k.of);
   if (k.minus.given()) l.minus = layout.channel(k.minus);
   if (l.rate && k.minus.given()) s.error("minus", fmt::format("'{}': 'minus' goes with 'of'", s.path()));
-  if (k.accumulation && k.design == nullptr) s.error("accumulation", fmt::format("'{}': 'accumulation' goes with 'design'", s.path()));
+  if (k.accumulation && k.design == nullptr)
+    s.error("accumulation", fmt::format("'{}': 'accumulation' goes with 'design'", s.path()));
   if (l.channel < 0 || (k.minus.given() && l.minus < 0) || !k.one_quantity || !k.one_bound) return;
   const ChannelDoc& channel = layout.channels[l.channel];
   l.kind = l.rate ? per_time(channel.kind) : (l.minus >= 0 ? difference_kind(channel.kind) : channel.kind);
   l.what = l.rate ? "rate of " + channel.name : channel.name;
   if (l.minus >= 0) {
     l.what += " - " + layout.channels[l.minus].name;
-    if (layout.channels[l.minus].kind.si != channel.kind.si) s.error("minus", fmt::format("'{}': '{}' and '{}' are not of one kind", s.path(), channel.name, layout.channels[l.minus].name));
+    if (layout.channels[l.minus].kind.si != channel.kind.si)
+      s.error("minus", fmt::format("'{}': '{}' and '{}' are not of one kind", s.path(), channel.name,
+                                   layout.channels[l.minus].name));
   }
   l.below = k.above == nullptr;
   const Node* node = k.above != nullptr ? k.above : (k.below != nullptr ? k.below : k.design);
@@ -149,7 +157,8 @@ void Watch::connect(const Model& model, ReadContext& context, Layout& layout) {
   }
   if (stop_ >= 0 || layout.excuse(model.run.stop_when.name)) return;
   const std::string near = nearest_name(model.run.stop_when.name, names);
-  layout.error(model.run.stop_when.place, fmt::format("there is no target '{}'{}", model.run.stop_when.name, near.empty() ? "" : "; did you mean '" + near + "'?"));
+  layout.error(model.run.stop_when.place, fmt::format("there is no target '{}'{}", model.run.stop_when.name,
+                                                      near.empty() ? "" : "; did you mean '" + near + "'?"));
 }
 
 std::string Watch::guard_name(int i) const {

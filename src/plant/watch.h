@@ -18,15 +18,15 @@ struct Target {
   double band = 0.0;      ///< half width, where it settles
   double duration = 0.0;  ///< s, how long it must stay
   std::string duration_unit;
-  int direction = 0;      ///< +1 rising, -1 falling, 0 either
-  int after = -1;         ///< the target that must come first
-  std::string unit;       ///< as the model writes the level
+  int direction = 0;                                       ///< +1 rising, -1 falling, 0 either
+  int after = -1;                                          ///< the target that must come first
+  std::string unit;                                        ///< as the model writes the level
   double time = std::numeric_limits<double>::quiet_NaN();  ///< when reached, s
 
   bool reached() const { return time == time; }
   // While running:
   bool armed = false;
-  int side = 0;            ///< +1 below the level (waiting to rise), -1 above
+  int side = 0;  ///< +1 below the level (waiting to rise), -1 above
   double inside_since = std::numeric_limits<double>::quiet_NaN();
 };
 
@@ -34,12 +34,12 @@ struct Target {
 struct Limit {
   std::string name;
   int channel = -1, minus = -1;
-  bool rate = false;      ///< on the rate of change of the channel
+  bool rate = false;  ///< on the rate of change of the channel
   bool below = true;
-  double bound = 0.0;     ///< SI; pressures absolute
+  double bound = 0.0;  ///< SI; pressures absolute
   UnitKind kind;
-  std::string unit;       ///< as the model writes the bound
-  std::string what;       ///< "chamber.pressure", "rate of chamber.temperature"
+  std::string unit;  ///< as the model writes the bound
+  std::string what;  ///< "chamber.pressure", "rate of chamber.temperature"
   double extreme = std::numeric_limits<double>::quiet_NaN(), extreme_time = 0.0;
   double crossed = std::numeric_limits<double>::quiet_NaN();  ///< first crossing, s
 

@@ -1,9 +1,9 @@
 #include "report/answer.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
-
-#include <fmt/format.h>
 
 #include "plant/cautions.h"
 #include "report/presenter.h"
@@ -13,9 +13,7 @@ namespace gaskettle {
 namespace {
 constexpr std::size_t most_events_shown = 24;
 
-Presenter presenter_of(const Plant& plant) {
-  return {plant.layout().atmosphere_pressure, plant.model().run.time_unit};
-}
+Presenter presenter_of(const Plant& plant) { return {plant.layout().atmosphere_pressure, plant.model().run.time_unit}; }
 
 std::string caution_block(const Plant& plant) {
   std::string out;
@@ -28,8 +26,10 @@ std::string targets_block(const Plant& plant, const CaseResult& r, const Present
   std::vector<std::vector<std::string>> rows;
   for (const Target& t : r.targets) {
     const ChannelDoc& c = plant.layout().channels[t.channel];
-    std::string what = t.settles ? fmt::format("{} within {} of {} for {}", c.name, p.show_difference(t.band, c.kind, ""), p.show(t.level, c.kind, t.unit), p.show(t.duration, unit_kinds::time, t.duration_unit))
-                                 : fmt::format("{} reaches {}", c.name, p.show(t.level, c.kind, t.unit));
+    std::string what =
+        t.settles ? fmt::format("{} within {} of {} for {}", c.name, p.show_difference(t.band, c.kind, ""),
+                                p.show(t.level, c.kind, t.unit), p.show(t.duration, unit_kinds::time, t.duration_unit))
+                  : fmt::format("{} reaches {}", c.name, p.show(t.level, c.kind, t.unit));
     rows.push_back({t.name, what, t.reached() ? "at " + p.time(t.time) : "NOT REACHED"});
   }
   return "\nTargets\n" + table(rows);
@@ -39,10 +39,14 @@ std::string limits_block(const CaseResult& r, const Presenter& p) {
   if (r.limits.empty()) return "";
   std::vector<std::vector<std::string>> rows;
   for (const Limit& l : r.limits) {
-    const std::string bound = fmt::format("{} {} {}", l.what, l.below ? "below" : "above", p.show(l.bound, l.kind, l.unit));
-    const std::string extreme = fmt::format("{} {} at {}", l.below ? "highest" : "lowest", p.show(l.extreme, l.kind, l.unit), p.time(l.extreme_time));
-    const std::string state = l.broken() ? fmt::format("EXCEEDED by {} from {}", p.show_difference(-l.margin(), l.kind, l.unit), p.time(l.crossed))
-                                         : "margin " + p.show_difference(l.margin(), l.kind, l.unit);
+    const std::string bound =
+        fmt::format("{} {} {}", l.what, l.below ? "below" : "above", p.show(l.bound, l.kind, l.unit));
+    const std::string extreme = fmt::format("{} {} at {}", l.below ? "highest" : "lowest",
+                                            p.show(l.extreme, l.kind, l.unit), p.time(l.extreme_time));
+    const std::string state =
+        l.broken()
+            ? fmt::format("EXCEEDED by {} from {}", p.show_difference(-l.margin(), l.kind, l.unit), p.time(l.crossed))
+            : "margin " + p.show_difference(l.margin(), l.kind, l.unit);
     rows.push_back({l.name, bound, extreme, state});
   }
   return "\nLimits\n" + table(rows);
@@ -51,10 +55,13 @@ std::string limits_block(const CaseResult& r, const Presenter& p) {
 std::string reliefs_block(const CaseResult& r, const Presenter& p) {
   if (r.reliefs.empty()) return "";
   const UnitKind flow{"mass flow", "kg s-1"};
-  std::vector<std::vector<std::string>> rows = {{"device", "lifts", "greatest lift", "peak inlet pressure", "over set", "capacity there", "needed", "released"}};
+  std::vector<std::vector<std::string>> rows = {
+      {"device", "lifts", "greatest lift", "peak inlet pressure", "over set", "capacity there", "needed", "released"}};
   for (const ReliefOutcome& o : r.reliefs)
-    rows.push_back({o.name, o.disc ? (o.lifts > 0 ? "burst" : "whole") : std::to_string(o.lifts), fmt::format("{:.0f} %", 100.0 * o.greatest_opening),
-                    p.show(o.peak_pressure, unit_kinds::pressure, "bar gauge"), fmt::format("{:+.2f} %", 100.0 * o.accumulation), p.scaled(o.capacity, flow),
+    rows.push_back({o.name, o.disc ? (o.lifts > 0 ? "burst" : "whole") : std::to_string(o.lifts),
+                    fmt::format("{:.0f} %", 100.0 * o.greatest_opening),
+                    p.show(o.peak_pressure, unit_kinds::pressure, "bar gauge"),
+                    fmt::format("{:+.2f} %", 100.0 * o.accumulation), p.scaled(o.capacity, flow),
                     o.needed > 0.0 ? p.scaled(o.needed, flow) : "-", p.scaled(o.released, unit_kinds::mass)});
   return "\nRelief devices\n" + table(rows);
 }
@@ -83,7 +90,8 @@ std::string energy_block(const CaseResult& r, const Presenter& p) {
   };
   for (int i = 0; i < first_work_term; ++i) row(ledger_names[i], b.term[i], ledger_meanings[i]);
   row("boundary_work", b.boundary_work, "work done by the gas on its moving boundaries, of which");
-  for (int i = first_work_term; i < ledger_term_count; ++i) row(std::string("  ") + ledger_names[i], b.term[i], ledger_meanings[i]);
+  for (int i = first_work_term; i < ledger_term_count; ++i)
+    row(std::string("  ") + ledger_names[i], b.term[i], ledger_meanings[i]);
   row("stored", b.stored, "gained by gas, walls, bodies and elements");
   return rows.empty() ? "" : "\nWhere the energy went\n" + table(rows, {1});
 }
@@ -98,20 +106,28 @@ std::string loss_block(const Plant& plant, const CaseResult& r, const Presenter&
   std::sort(order.begin(), order.end());
   std::vector<std::vector<std::string>> rows;
   for (const auto& [negative, m] : order)
-    rows.push_back({mechanism_names[m], p.scaled(-negative * ambient, unit_kinds::energy), fmt::format("{:.1f} %", 100.0 * b.entropy[m] / b.generated), mechanism_meanings[m]});
-  return "\nWhere the effort was lost (exergy destroyed, against the surroundings at the start)\n" + table(rows, {1, 2});
+    rows.push_back({mechanism_names[m], p.scaled(-negative * ambient, unit_kinds::energy),
+                    fmt::format("{:.1f} %", 100.0 * b.entropy[m] / b.generated), mechanism_meanings[m]});
+  return "\nWhere the effort was lost (exergy destroyed, against the surroundings at the start)\n" +
+         table(rows, {1, 2});
 }
 
 std::string bookkeeping_block(const CaseResult& r) {
   const Books& b = r.books;
   const Statistics& s = r.ending.stats;
   std::string out = "\nBookkeeping (that the sums are right, not how accurate they are)\n";
-  out += fmt::format("  energy closes to {:.1e} of throughput, mass to {:.1e}: {}\n", b.closure_energy, b.closure_mass, r.books_closed() ? "closed" : "NOT CLOSED");
+  out += fmt::format("  energy closes to {:.1e} of throughput, mass to {:.1e}: {}\n", b.closure_energy, b.closure_mass,
+                     r.books_closed() ? "closed" : "NOT CLOSED");
   for (const WorkComparison& w : b.work)
-    if (w.scale > 0.0) out += fmt::format("  {} against its ledger: {:.1e} of {:.3g} J (an accuracy)\n", w.what, w.difference() / w.scale, w.scale);
-  if (b.generated > 0.0) out += fmt::format("  entropy: {:.6g} J/K generated, unexplained {:.1e} of it\n", b.generated, std::abs(b.entropy_imbalance()) / b.generated);
-  out += fmt::format("  {} steps ({} stiff, {} explicit), {} rejected, {} rate calls, {} Jacobians, {} events, {:.2g} s\n", s.steps, s.steps_stiff, s.steps_explicit,
-                     s.rejected, s.rate_calls, s.jacobians, s.events, r.wall_seconds);
+    if (w.scale > 0.0)
+      out += fmt::format("  {} against its ledger: {:.1e} of {:.3g} J (an accuracy)\n", w.what,
+                         w.difference() / w.scale, w.scale);
+  if (b.generated > 0.0)
+    out += fmt::format("  entropy: {:.6g} J/K generated, unexplained {:.1e} of it\n", b.generated,
+                       std::abs(b.entropy_imbalance()) / b.generated);
+  out += fmt::format(
+      "  {} steps ({} stiff, {} explicit), {} rejected, {} rate calls, {} Jacobians, {} events, {:.2g} s\n", s.steps,
+      s.steps_stiff, s.steps_explicit, s.rejected, s.rate_calls, s.jacobians, s.events, r.wall_seconds);
   return out;
 }
 }  // namespace
@@ -120,7 +136,8 @@ std::string gas_model_line(const Plant& plant) {
   std::string out;
   for (const SpaceInfo& s : plant.layout().spaces) {
     std::string gases;
-    for (const auto& [name, x] : s.composition) gases += (gases.empty() ? "" : ", ") + (s.composition.size() > 1 ? fmt::format("{} {:.4g}", name, x) : name);
+    for (const auto& [name, x] : s.composition)
+      gases += (gases.empty() ? "" : ", ") + (s.composition.size() > 1 ? fmt::format("{} {:.4g}", name, x) : name);
     out += fmt::format("  {}: ideal gas ({}), cp of temperature from the gas data\n", s.name, gases);
   }
   return out;
@@ -131,7 +148,8 @@ std::string verdict(const Plant& plant, const CaseResult& r) {
   std::string out;
   for (const Limit& l : r.limits)
     if (l.broken())
-      out += fmt::format("Limit '{}' EXCEEDED: {} reached {} at {}. ", l.name, l.what, p.show(l.extreme, l.kind, l.unit), p.time(l.extreme_time));
+      out += fmt::format("Limit '{}' EXCEEDED: {} reached {} at {}. ", l.name, l.what,
+                         p.show(l.extreme, l.kind, l.unit), p.time(l.extreme_time));
   if (r.partial()) out += fmt::format("STOPPED EARLY at {}: {}. ", p.time(r.ending.time), r.ending.message);
   if (!r.books_closed()) out += "The books did NOT CLOSE: do not use this result. ";
   for (const Target& t : r.targets)
@@ -140,10 +158,17 @@ std::string verdict(const Plant& plant, const CaseResult& r) {
     out.pop_back();
     return out;
   }
-  std::string limits = r.limits.empty() ? "No limit was set" : (r.limits.size() == 1 ? "The limit was kept" : fmt::format("All {} limits were kept", r.limits.size()));
-  std::string targets = r.targets.empty() ? "" : (r.targets.size() == 1 ? "; the target was reached" : fmt::format("; all {} targets were reached", r.targets.size()));
+  std::string limits =
+      r.limits.empty()
+          ? "No limit was set"
+          : (r.limits.size() == 1 ? "The limit was kept" : fmt::format("All {} limits were kept", r.limits.size()));
+  std::string targets = r.targets.empty()
+                            ? ""
+                            : (r.targets.size() == 1 ? "; the target was reached"
+                                                     : fmt::format("; all {} targets were reached", r.targets.size()));
   if (r.targets.size() == 1) targets += " at " + p.time(r.targets[0].time);
-  return fmt::format("{}{}. Ended at {}{}.", limits, targets, p.time(r.ending.time), r.ending.reason == EndReason::stop_condition ? " (" + r.ending.message + ")" : "");
+  return fmt::format("{}{}. Ended at {}{}.", limits, targets, p.time(r.ending.time),
+                     r.ending.reason == EndReason::stop_condition ? " (" + r.ending.message + ")" : "");
 }
 
 std::string answer_text(const Plant& plant, const CaseResult& r, const AnswerContext& context) {

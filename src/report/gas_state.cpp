@@ -1,8 +1,8 @@
 #include "report/gas_state.h"
 
-#include <cmath>
-
 #include <fmt/format.h>
+
+#include <cmath>
 #include <nlohmann/json.hpp>
 
 #include "gas/mixture.h"
@@ -32,7 +32,9 @@ GasStateReport ideal_gas_state(const Species& species, double temperature, doubl
 
 std::string gas_state_text(const Species& species, const GasStateReport& r) {
   std::vector<std::vector<std::string>> rows = {{species.name, "ideal", ""}};
-  const auto row = [&](const char* name, double x, const char* unit) { rows.push_back({name, std::isfinite(x) ? fmt::format("{:.7g}", x) : "-", unit}); };
+  const auto row = [&](const char* name, double x, const char* unit) {
+    rows.push_back({name, std::isfinite(x) ? fmt::format("{:.7g}", x) : "-", unit});
+  };
   row("temperature", r.temperature, "K");
   row("pressure", r.pressure, "Pa abs");
   row("density", r.density, "kg/m3");
@@ -48,15 +50,28 @@ std::string gas_state_text(const Species& species, const GasStateReport& r) {
   row("molar_mass", r.molar_mass, "kg/mol");
   std::string out = table(rows, {1});
   if (r.temperature < species.lowest_temperature() || r.temperature > species.highest_temperature())
-    out += fmt::format("  warning: outside the published range {:.0f} to {:.0f} K; cp is held there\n", species.lowest_temperature(), species.highest_temperature());
+    out += fmt::format("  warning: outside the published range {:.0f} to {:.0f} K; cp is held there\n",
+                       species.lowest_temperature(), species.highest_temperature());
   return out + "  source: " + species.source + "\n";
 }
 
 std::string gas_state_json(const GasStateReport& r) {
-  const auto number = [](double x) { return std::isfinite(x) ? nlohmann::ordered_json(x) : nlohmann::ordered_json(nullptr); };
-  const nlohmann::ordered_json ideal = {{"temperature", r.temperature}, {"pressure", r.pressure}, {"density", r.density}, {"energy", r.energy},
-    {"enthalpy", r.enthalpy}, {"entropy", r.entropy}, {"cv", r.cv}, {"cp", r.cp}, {"sound_speed", r.sound_speed}, {"viscosity", number(r.viscosity)},
-    {"conductivity", number(r.conductivity)}, {"joule_thomson", r.joule_thomson}, {"molar_mass", r.molar_mass}};
+  const auto number = [](double x) {
+    return std::isfinite(x) ? nlohmann::ordered_json(x) : nlohmann::ordered_json(nullptr);
+  };
+  const nlohmann::ordered_json ideal = {{"temperature", r.temperature},
+                                        {"pressure", r.pressure},
+                                        {"density", r.density},
+                                        {"energy", r.energy},
+                                        {"enthalpy", r.enthalpy},
+                                        {"entropy", r.entropy},
+                                        {"cv", r.cv},
+                                        {"cp", r.cp},
+                                        {"sound_speed", r.sound_speed},
+                                        {"viscosity", number(r.viscosity)},
+                                        {"conductivity", number(r.conductivity)},
+                                        {"joule_thomson", r.joule_thomson},
+                                        {"molar_mass", r.molar_mass}};
   return nlohmann::ordered_json{{"ideal", ideal}}.dump(2) + "\n";
 }
 

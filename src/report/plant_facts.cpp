@@ -1,9 +1,9 @@
 #include "report/plant_facts.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
-
-#include <fmt/format.h>
 #include <nlohmann/json.hpp>
 
 #include "gas/catalogue.h"
@@ -72,10 +72,14 @@ std::vector<std::string> advice(const Plant& plant) {
   const Layout& layout = plant.layout();
   std::vector<std::string> list = layout.advice;
   for (const SpaceInfo& s : layout.spaces) {
-    const bool faced = std::any_of(layout.faces.begin(), layout.faces.end(), [&](const FaceInfo& f) { return f.space == s.index; });
+    const bool faced =
+        std::any_of(layout.faces.begin(), layout.faces.end(), [&](const FaceInfo& f) { return f.space == s.index; });
     if (!faced) list.push_back(fmt::format("{}: no wall: it is taken as perfectly insulated", s.name));
     if (const double d = departure_from_ideal(layout, s); d > 0.02)
-      list.push_back(fmt::format("{}: at the start |Z - 1| is about {:.1f} % (second virial coefficient): the ideal gas is off by about that much", s.name, 100.0 * d));
+      list.push_back(
+          fmt::format("{}: at the start |Z - 1| is about {:.1f} % (second virial coefficient): the ideal gas is off by "
+                      "about that much",
+                      s.name, 100.0 * d));
   }
   const auto on_pressure = [](const Limit& l) { return l.kind.flavour == UnitFlavour::pressure; };
   if (std::none_of(plant.watch().limits().begin(), plant.watch().limits().end(), on_pressure))
@@ -89,13 +93,15 @@ std::string facts_text(Plant& plant, const std::string& model_file) {
   const Presenter p(layout.atmosphere_pressure, plant.model().run.time_unit);
   std::string out;
   for (const std::string& c : cautions(plant)) out += wrapped("CAUTION: " + c, 100, "");
-  out += fmt::format("\n{}: read and laid out without a problem\n", plant.model().title.empty() ? model_file : plant.model().title);
+  out += fmt::format("\n{}: read and laid out without a problem\n",
+                     plant.model().title.empty() ? model_file : plant.model().title);
   std::vector<std::vector<std::string>> rows;
   for (const Fact& f : layout.facts) rows.push_back({f.part, f.what, p.scaled(f.value, f.kind)});
   for (const SpaceInfo& s : layout.spaces) {
     rows.push_back({s.name, "pressure at the start", p.scaled(*s.pressure, unit_kinds::pressure)});
     rows.push_back({s.name, "volume at the start", p.scaled(s.volume, unit_kinds::volume)});
-    rows.push_back({s.name, "stored energy (isentropic expansion to the surroundings)", p.scaled(stored_energy(layout, s), unit_kinds::energy)});
+    rows.push_back({s.name, "stored energy (isentropic expansion to the surroundings)",
+                    p.scaled(stored_energy(layout, s), unit_kinds::energy)});
   }
   std::stable_sort(rows.begin(), rows.end(), [](const auto& a, const auto& b) { return a[0] < b[0]; });
   out += "\nThe plant in numbers\n" + table(rows, {2});
@@ -103,7 +109,8 @@ std::string facts_text(Plant& plant, const std::string& model_file) {
   for (const TimeConstant& t : time_constants(plant)) times.push_back({t.store, p.scaled(t.seconds, unit_kinds::time)});
   if (!times.empty()) out += "\nTime constants at the start\n" + table(times, {1});
   out += "\nGas models\n";
-  for (const SpaceInfo& s : layout.spaces) out += fmt::format("  {}: ideal gas, gas data version {}\n", s.name, gas_data_version());
+  for (const SpaceInfo& s : layout.spaces)
+    out += fmt::format("  {}: ideal gas, gas data version {}\n", s.name, gas_data_version());
   if (!plant.model().defaults_used.empty()) {
     out += "\nDefaults in use\n";
     for (const std::string& d : plant.model().defaults_used) out += "  " + d + "\n";
@@ -118,16 +125,28 @@ std::string facts_json(Plant& plant, const std::string& model_file) {
   using Json = nlohmann::ordered_json;
   const Layout& layout = plant.layout();
   Json facts = Json::array(), times = Json::array(), spaces = Json::object();
-  for (const Fact& f : layout.facts) facts.push_back({{"part", f.part}, {"what", f.what}, {"value", f.value}, {"unit", f.kind.si}});
+  for (const Fact& f : layout.facts)
+    facts.push_back({{"part", f.part}, {"what", f.what}, {"value", f.value}, {"unit", f.kind.si}});
   for (const TimeConstant& t : time_constants(plant)) times.push_back({{"store", t.store}, {"seconds", t.seconds}});
   for (const SpaceInfo& s : layout.spaces) {
     double mass = 0.0;
     for (const double m : s.mass) mass += m;
-    spaces[s.name] = {{"volume", s.volume}, {"temperature", s.temperature}, {"pressure", *s.pressure}, {"mass", mass},
-                      {"stored_energy", stored_energy(layout, s)}, {"pressure_times_volume", *s.pressure * s.volume}, {"gas_model", "ideal"}};
+    spaces[s.name] = {{"volume", s.volume},
+                      {"temperature", s.temperature},
+                      {"pressure", *s.pressure},
+                      {"mass", mass},
+                      {"stored_energy", stored_energy(layout, s)},
+                      {"pressure_times_volume", *s.pressure * s.volume},
+                      {"gas_model", "ideal"}};
   }
-  const Json all = {{"model", model_file}, {"title", plant.model().title}, {"cautions", cautions(plant)}, {"gas_spaces", spaces}, {"facts", facts},
-                    {"time_constants", times}, {"defaults", plant.model().defaults_used}, {"advice", advice(plant)}};
+  const Json all = {{"model", model_file},
+                    {"title", plant.model().title},
+                    {"cautions", cautions(plant)},
+                    {"gas_spaces", spaces},
+                    {"facts", facts},
+                    {"time_constants", times},
+                    {"defaults", plant.model().defaults_used},
+                    {"advice", advice(plant)}};
   return all.dump(2) + "\n";
 }
 

@@ -1,10 +1,10 @@
 #include "report/presenter.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
 #include <sstream>
-
-#include <fmt/format.h>
 
 namespace gaskettle {
 
@@ -24,20 +24,36 @@ struct Scale {
   double factor;
   const char* name;
 };
-constexpr Scale scales[] = {
-    {"J", 1e9, 1e9, "GJ"},      {"J", 1e6, 1e6, "MJ"},      {"J", 1e3, 1e3, "kJ"},        {"W", 1e6, 1e6, "MW"},
-    {"W", 1e3, 1e3, "kW"},      {"J K-1", 1e6, 1e6, "MJ/K"}, {"J K-1", 1e3, 1e3, "kJ/K"}, {"J K-1", 0.0, 1.0, "J/K"},
-    {"kg s-1", 1.0, 1.0, "kg/s"}, {"kg s-1", 0.0, 1e-3, "g/s"}, {"kg", 1.0, 1.0, "kg"},   {"kg", 0.0, 1e-3, "g"},
-    {"m", 1.0, 1.0, "m"},       {"m", 0.0, 1e-3, "mm"},     {"m3", 0.1, 1.0, "m3"},       {"m3", 0.0, 1e-3, "l"},
-    {"K s-1", 0.0, 1.0 / 60.0, "K/min"}, {"s", 7200.0, 3600.0, "h"}, {"s", 120.0, 60.0, "min"}, {"W m-2 K-1", 0.0, 1.0, "W/m2/K"}};
+constexpr Scale scales[] = {{"J", 1e9, 1e9, "GJ"},
+                            {"J", 1e6, 1e6, "MJ"},
+                            {"J", 1e3, 1e3, "kJ"},
+                            {"W", 1e6, 1e6, "MW"},
+                            {"W", 1e3, 1e3, "kW"},
+                            {"J K-1", 1e6, 1e6, "MJ/K"},
+                            {"J K-1", 1e3, 1e3, "kJ/K"},
+                            {"J K-1", 0.0, 1.0, "J/K"},
+                            {"kg s-1", 1.0, 1.0, "kg/s"},
+                            {"kg s-1", 0.0, 1e-3, "g/s"},
+                            {"kg", 1.0, 1.0, "kg"},
+                            {"kg", 0.0, 1e-3, "g"},
+                            {"m", 1.0, 1.0, "m"},
+                            {"m", 0.0, 1e-3, "mm"},
+                            {"m3", 0.1, 1.0, "m3"},
+                            {"m3", 0.0, 1e-3, "l"},
+                            {"K s-1", 0.0, 1.0 / 60.0, "K/min"},
+                            {"s", 7200.0, 3600.0, "h"},
+                            {"s", 120.0, 60.0, "min"},
+                            {"W m-2 K-1", 0.0, 1.0, "W/m2/K"}};
 }  // namespace
 
 std::string Presenter::scaled(double si, const UnitKind& kind) const {
   if (kind.flavour == UnitFlavour::temperature) return fmt::format("{:.2f} degC", si - 273.15);
-  if (kind.flavour == UnitFlavour::pressure) return fmt::format("{:.4g} bar abs ({:.4g} bar gauge)", si / 1e5, (si - atmosphere_) / 1e5);
+  if (kind.flavour == UnitFlavour::pressure)
+    return fmt::format("{:.4g} bar abs ({:.4g} bar gauge)", si / 1e5, (si - atmosphere_) / 1e5);
   if (kind.flavour == UnitFlavour::pressure_difference) return fmt::format("{:.4g} bar", si / 1e5);
   for (const Scale& s : scales)
-    if (kind.si == s.si && std::abs(si) >= s.above) return fmt::format("{} {}", format_number(si / s.factor, 4), s.name);
+    if (kind.si == s.si && std::abs(si) >= s.above)
+      return fmt::format("{} {}", format_number(si / s.factor, 4), s.name);
   return kind.si == "1" ? format_number(si, 4) : fmt::format("{} {}", format_number(si, 4), kind.si);
 }
 
@@ -62,7 +78,8 @@ std::string Presenter::time(double seconds) const {
   static const std::vector<std::pair<std::string, double>> smaller = {{"h", 3600.0}, {"min", 60.0}, {"s", 1.0}};
   if (seconds == 0.0) return "0 s";
   double unit = parse_quantity("1 " + (time_unit_.empty() ? "s" : time_unit_), unit_kinds::time).value;
-  if (std::abs(seconds) >= unit) return format_quantity(seconds, unit_kinds::time, time_unit_.empty() ? "s" : time_unit_, 5);
+  if (std::abs(seconds) >= unit)
+    return format_quantity(seconds, unit_kinds::time, time_unit_.empty() ? "s" : time_unit_, 5);
   for (const auto& [name, size] : smaller)
     if (size < unit && std::abs(seconds) >= size) return format_number(seconds / size, 5) + " " + name;
   return format_number(seconds, 5) + " s";

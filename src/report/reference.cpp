@@ -1,11 +1,11 @@
 #include "report/reference.h"
 
+#include <fmt/format.h>
+#include <fmt/ranges.h>
+
 #include <algorithm>
 #include <set>
 #include <vector>
-
-#include <fmt/format.h>
-#include <fmt/ranges.h>
 
 #include "base/problems.h"
 #include "gas/catalogue.h"
@@ -26,9 +26,40 @@ const std::vector<KeyDoc>& keys() {
 
 const std::vector<UnitKind>& kinds() {
   using namespace unit_kinds;
-  static const std::vector<UnitKind> list = {length, area, volume, mass, time, temperature, temperature_difference, pressure, pressure_difference, force, torque,
-    power, energy, angle, frequency, rotation, velocity, acceleration, heat_capacity, specific_heat, conductivity, film_coefficient, unit_kinds::conductance,
-    contact_resistance, heat_flux, density, molar_mass, stiffness, viscous_coefficient, sonic_conductance, viscosity, gas_flow, liquid_flow, percentage};
+  static const std::vector<UnitKind> list = {length,
+                                             area,
+                                             volume,
+                                             mass,
+                                             time,
+                                             temperature,
+                                             temperature_difference,
+                                             pressure,
+                                             pressure_difference,
+                                             force,
+                                             torque,
+                                             power,
+                                             energy,
+                                             angle,
+                                             frequency,
+                                             rotation,
+                                             velocity,
+                                             acceleration,
+                                             heat_capacity,
+                                             specific_heat,
+                                             conductivity,
+                                             film_coefficient,
+                                             unit_kinds::conductance,
+                                             contact_resistance,
+                                             heat_flux,
+                                             density,
+                                             molar_mass,
+                                             stiffness,
+                                             viscous_coefficient,
+                                             sonic_conductance,
+                                             viscosity,
+                                             gas_flow,
+                                             liquid_flow,
+                                             percentage};
   return list;
 }
 
@@ -54,22 +85,28 @@ std::string section_text(const std::string& prefix) {
 
 std::string gas_text(const GasEntry& g) {
   const Species& s = g.species;
-  std::string out = fmt::format("{} ({})\n  molar mass {:.6g} g/mol, published range {:.0f} to {:.0f} K\n  cp, h, s: {}\n", s.name, fmt::join(g.aliases, ", "),
-                                1000.0 * s.molar_mass, s.lowest_temperature(), s.highest_temperature(), s.source);
-  out += s.transport_source.empty() ? "  no viscosity or conductivity\n" : "  viscosity, conductivity: " + s.transport_source + "\n";
+  std::string out = fmt::format(
+      "{} ({})\n  molar mass {:.6g} g/mol, published range {:.0f} to {:.0f} K\n  cp, h, s: {}\n", s.name,
+      fmt::join(g.aliases, ", "), 1000.0 * s.molar_mass, s.lowest_temperature(), s.highest_temperature(), s.source);
+  out += s.transport_source.empty() ? "  no viscosity or conductivity\n"
+                                    : "  viscosity, conductivity: " + s.transport_source + "\n";
   return out;
 }
 
 std::string material_text(const Material& m) {
   std::string k;
-  for (const auto& [t, value] : m.conductivity) k += fmt::format("{}{:.4g} W/m/K at {:.0f} degC", k.empty() ? "" : ", ", value, t - 273.15);
-  return fmt::format("{}\n  density {:.5g} kg/m3, specific heat {:.4g} J/kg/K, emissivity {:.2g}\n  conductivity {}\n  source: {}\n", m.name, m.density, m.specific_heat,
-                     m.emissivity, k, m.source);
+  for (const auto& [t, value] : m.conductivity)
+    k += fmt::format("{}{:.4g} W/m/K at {:.0f} degC", k.empty() ? "" : ", ", value, t - 273.15);
+  return fmt::format(
+      "{}\n  density {:.5g} kg/m3, specific heat {:.4g} J/kg/K, emissivity {:.2g}\n  conductivity {}\n  source: {}\n",
+      m.name, m.density, m.specific_heat, m.emissivity, k, m.source);
 }
 
 std::string film_text(const FilmEntry& f) {
-  return fmt::format("{} ({} faces)\n", f.name, f.inside && f.outside ? "inner and outer" : (f.inside ? "inner" : "outer")) + wrapped(std::string(f.meaning), 96, "  ") +
-         wrapped("range: " + std::string(f.range), 96, "  ") + wrapped("source: " + std::string(f.source), 96, "  ");
+  return fmt::format("{} ({} faces)\n", f.name,
+                     f.inside && f.outside ? "inner and outer" : (f.inside ? "inner" : "outer")) +
+         wrapped(std::string(f.meaning), 96, "  ") + wrapped("range: " + std::string(f.range), 96, "  ") +
+         wrapped("source: " + std::string(f.source), 96, "  ");
 }
 
 std::string unit_text(const UnitKind& k) {
@@ -123,24 +160,39 @@ std::string nearest_word(const std::string& word) { return nearest_name(word, al
 std::optional<std::string> explain(const std::string& word) {
   std::string out;
   if (word.empty()) return overview();
-  if (word == "gases") for (const GasEntry& g : gas_catalogue()) out += gas_text(g);
-  if (word == "materials") for (const Material& m : material_catalogue()) out += material_text(m);
-  if (word == "films") for (const FilmEntry& f : film_catalogue()) out += film_text(f);
-  if (word == "units") for (const UnitKind& u : kinds()) out += unit_text(u);
+  if (word == "gases")
+    for (const GasEntry& g : gas_catalogue()) out += gas_text(g);
+  if (word == "materials")
+    for (const Material& m : material_catalogue()) out += material_text(m);
+  if (word == "films")
+    for (const FilmEntry& f : film_catalogue()) out += film_text(f);
+  if (word == "units")
+    for (const UnitKind& u : kinds()) out += unit_text(u);
   if (word == "quantities") out += quantity_text();
   for (const GasEntry& g : gas_catalogue())
-    if (g.species.name == word || std::find(g.aliases.begin(), g.aliases.end(), word) != g.aliases.end()) out += gas_text(g);
-  for (const Material& m : material_catalogue()) if (m.name == word) out += material_text(m);
-  for (const FilmEntry& f : film_catalogue()) if (f.name == word) out += film_text(f);
-  for (const UnitKind& u : kinds()) if (u.name == word) out += unit_text(u);
-  for (int i = 0; i < ledger_term_count; ++i) if (word == ledger_names[i]) out += fmt::format("energy.{}: {}\n", word, ledger_meanings[i]);
-  for (int m = 0; m < mechanism_count; ++m) if (word == mechanism_names[m]) out += fmt::format("entropy.{}: entropy generated by {}\n", word, mechanism_meanings[m]);
+    if (g.species.name == word || std::find(g.aliases.begin(), g.aliases.end(), word) != g.aliases.end())
+      out += gas_text(g);
+  for (const Material& m : material_catalogue())
+    if (m.name == word) out += material_text(m);
+  for (const FilmEntry& f : film_catalogue())
+    if (f.name == word) out += film_text(f);
+  for (const UnitKind& u : kinds())
+    if (u.name == word) out += unit_text(u);
+  for (int i = 0; i < ledger_term_count; ++i)
+    if (word == ledger_names[i]) out += fmt::format("energy.{}: {}\n", word, ledger_meanings[i]);
+  for (int m = 0; m < mechanism_count; ++m)
+    if (word == mechanism_names[m])
+      out += fmt::format("entropy.{}: entropy generated by {}\n", word, mechanism_meanings[m]);
   for (const UnitKind& u : kinds()) {
     const std::vector<std::string> units = example_units(u);
-    if (std::find(units.begin(), units.end(), word) != units.end() || (u.flavour == UnitFlavour::pressure && is_plain_pressure_unit(word))) out += unit_text(u);
+    if (std::find(units.begin(), units.end(), word) != units.end() ||
+        (u.flavour == UnitFlavour::pressure && is_plain_pressure_unit(word)))
+      out += unit_text(u);
   }
-  for (const Word& w : channel_words()) if (word == w.name) out += fmt::format("PART.{}: {}  (in a record: {})\n", w.name, w.meaning, w.units);
-  for (const Word& w : varying_words()) if (word == w.name) out += fmt::format("{}: {}\n    {}\n", w.name, w.meaning, w.units);
+  for (const Word& w : channel_words())
+    if (word == w.name) out += fmt::format("PART.{}: {}  (in a record: {})\n", w.name, w.meaning, w.units);
+  for (const Word& w : varying_words())
+    if (word == w.name) out += fmt::format("{}: {}\n    {}\n", w.name, w.meaning, w.units);
   out += section_text(word);
   if (word.find('.') == std::string::npos)
     for (const KeyDoc& k : keys())

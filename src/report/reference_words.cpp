@@ -39,11 +39,15 @@ const std::vector<Word>& channel_words() {
 const std::vector<Word>& varying_words() {
   static const std::vector<Word> words = {
       {"schedule", "points in time, joined by straight lines or held; the end values hold outside",
-       "{schedule: [[0 s, 20 degC], [60 s, 80 degC]], held: true, repeat: 3}   (held and repeat may be left out; repeat: forever)"},
-      {"ramp", "from the start value (a setpoint: from what the controller reads) at a rate, then it stays", "{ramp: {to: 150 degC, at: 2 K/min}}"},
-      {"sine", "about a mean; frequency in cycles a second", "{sine: {mean: 20 degC, amplitude: 5 K, frequency: 0.01 Hz}}"},
+       "{schedule: [[0 s, 20 degC], [60 s, 80 degC]], held: true, repeat: 3}   (held and repeat may be left out; "
+       "repeat: forever)"},
+      {"ramp", "from the start value (a setpoint: from what the controller reads) at a rate, then it stays",
+       "{ramp: {to: 150 degC, at: 2 K/min}}"},
+      {"sine", "about a mean; frequency in cycles a second",
+       "{sine: {mean: 20 degC, amplitude: 5 K, frequency: 0.01 Hz}}"},
       {"csv", "a column of a file: not built yet", "{csv: {file: log.csv, column: T}}"},
-      {"supply", "an end of a port: gas without end at a stated state, each of which may vary", "{supply: {gas: nitrogen, pressure: 16 bar abs, temperature: 15 degC}}"},
+      {"supply", "an end of a port: gas without end at a stated state, each of which may vary",
+       "{supply: {gas: nitrogen, pressure: 16 bar abs, temperature: 15 degC}}"},
       {"atmosphere", "an end of a port or relief device: the surroundings, whose gas flows in", "to: atmosphere"}};
   return words;
 }

@@ -24,7 +24,11 @@ using Clock = std::chrono::steady_clock;
 class CaseObserver {
 public:
   CaseObserver(Plant& plant, const CaseOptions& options, RecordWriter* writer)
-      : plant_(plant), options_(options), writer_(writer), rows_(plant, writer, plant.model().run.record_every), extremes_(plant) {}
+      : plant_(plant),
+        options_(options),
+        writer_(writer),
+        rows_(plant, writer, plant.model().run.record_every),
+        extremes_(plant) {}
 
   void start(double t, const double* y) {
     rows_.start(t, y);
@@ -80,8 +84,10 @@ std::unique_ptr<RecordWriter> open_record(const Plant& plant, const CaseOptions&
   for (const ChannelDoc& c : plant.layout().channels) s.channels.push_back({c.name, c.kind.si, c.meaning});
   for (const BookColumn& b : book_columns(plant)) s.channels.push_back({b.name, b.units, b.meaning});
   for (const ProfileDoc& p : plant.layout().profiles)
-    s.profiles.push_back({p.part + ".profile", "K", "temperature over the depth of " + p.part, p.part + ".depth", p.depth});
-  s.expected_rows = static_cast<std::size_t>(std::min(1e6, plant.model().run.until / plant.model().run.record_every)) + 2;
+    s.profiles.push_back(
+        {p.part + ".profile", "K", "temperature over the depth of " + p.part, p.part + ".depth", p.depth});
+  s.expected_rows =
+      static_cast<std::size_t>(std::min(1e6, plant.model().run.until / plant.model().run.record_every)) + 2;
   return std::make_unique<RecordWriter>(std::move(s));
 }
 
@@ -91,14 +97,23 @@ Outcome outcome_of(const CaseResult& r) {
   for (const Limit& l : r.limits) o.limits.push_back({l.name, l.extreme, l.extreme_time, l.margin(), l.crossed});
   const Statistics& s = r.ending.stats;
   const auto count = [](long n) { return Attribute(static_cast<std::int64_t>(n)); };
-  o.attributes = {{"closure_energy", r.books.closure_energy}, {"closure_mass", r.books.closure_mass},
-                  {"ended", std::string(name(r.ending.reason))}, {"ended_message", r.ending.message},
-                  {"end_time", r.ending.time}, {"partial", count(r.partial() ? 1 : 0)},
+  o.attributes = {{"closure_energy", r.books.closure_energy},
+                  {"closure_mass", r.books.closure_mass},
+                  {"ended", std::string(name(r.ending.reason))},
+                  {"ended_message", r.ending.message},
+                  {"end_time", r.ending.time},
+                  {"partial", count(r.partial() ? 1 : 0)},
                   {"books_closed", count(r.books_closed() ? 1 : 0)},
-                  {"entropy_generated", r.books.generated}, {"entropy_imbalance", r.books.entropy_imbalance()},
-                  {"steps", count(s.steps)}, {"steps_stiff", count(s.steps_stiff)}, {"steps_explicit", count(s.steps_explicit)},
-                  {"rejected", count(s.rejected)}, {"rate_calls", count(s.rate_calls)}, {"jacobians", count(s.jacobians)},
-                  {"factorisations", count(s.factorisations)}, {"events", count(s.events)}};
+                  {"entropy_generated", r.books.generated},
+                  {"entropy_imbalance", r.books.entropy_imbalance()},
+                  {"steps", count(s.steps)},
+                  {"steps_stiff", count(s.steps_stiff)},
+                  {"steps_explicit", count(s.steps_explicit)},
+                  {"rejected", count(s.rejected)},
+                  {"rate_calls", count(s.rate_calls)},
+                  {"jacobians", count(s.jacobians)},
+                  {"factorisations", count(s.factorisations)},
+                  {"events", count(s.events)}};
   return o;
 }
 }  // namespace
@@ -122,7 +137,8 @@ CaseResult run_case(Plant& plant, const CaseOptions& options) {
   result.events = plant.events();
   result.warnings = plant.layout().warnings;
   const Workspace<double>& w = plant.observe(result.ending.time, y.data());
-  for (std::size_t c = 0; c < w.out.size(); ++c) result.end_values.emplace_back(plant.layout().channels[c].name, w.out[c]);
+  for (std::size_t c = 0; c < w.out.size(); ++c)
+    result.end_values.emplace_back(plant.layout().channels[c].name, w.out[c]);
   result.wall_seconds = std::chrono::duration<double>(Clock::now() - began).count();
   if (!writer) return result;
   for (const LoggedEvent& e : result.events) writer->add_event({e.time, e.part, e.what, e.before, e.after});

@@ -13,10 +13,10 @@
 namespace gaskettle {
 
 struct CaseOptions {
-  std::string record_path;      ///< empty: no record is written
+  std::string record_path;  ///< empty: no record is written
   bool overwrite = false;
   Provenance provenance;
-  std::string identity;         ///< same model and settings: same text
+  std::string identity;                          ///< same model and settings: same text
   const std::atomic<bool>* interrupt = nullptr;  ///< set to end the run where it is
   std::function<void(double t, double until)> progress;
 };
@@ -27,12 +27,12 @@ struct ReliefOutcome {
   bool disc = false;
   long lifts = 0;
   double greatest_opening = 0.0;
-  double peak_pressure = 0.0;       ///< Pa absolute, the highest at its inlet
-  double accumulation = 0.0;        ///< (peak gauge - set gauge) / set gauge
-  double set_pressure = 0.0;        ///< Pa absolute
-  double capacity = 0.0;            ///< kg/s fully open at the peak pressure
-  double needed = 0.0;              ///< kg/s, the greatest flow that would have held the pressure while at or above set
-  double released = 0.0;            ///< kg
+  double peak_pressure = 0.0;  ///< Pa absolute, the highest at its inlet
+  double accumulation = 0.0;   ///< (peak gauge - set gauge) / set gauge
+  double set_pressure = 0.0;   ///< Pa absolute
+  double capacity = 0.0;       ///< kg/s fully open at the peak pressure
+  double needed = 0.0;         ///< kg/s, the greatest flow that would have held the pressure while at or above set
+  double released = 0.0;       ///< kg
 };
 
 struct CaseResult {

@@ -13,7 +13,8 @@ namespace {
 constexpr int samples_per_piece = 6;
 }
 
-RowSampler::RowSampler(Plant& plant, RecordWriter* writer, double every) : plant_(plant), writer_(writer), every_(every) {
+RowSampler::RowSampler(Plant& plant, RecordWriter* writer, double every)
+    : plant_(plant), writer_(writer), every_(every) {
   y_.resize(static_cast<std::size_t>(plant.size()));
 }
 
@@ -104,12 +105,14 @@ void ExtremeTracker::take_relief(double t, const double* y, const Workspace<doub
     if (gas.pressure > r.peak_pressure) {
       r.peak_pressure = gas.pressure;
       const double behind = info.outlet_space >= 0 ? w.gas[info.outlet_space].pressure : layout.atmosphere_pressure;
-      r.capacity = info.area * info.discharge_coefficient *
-                   nozzle_flux(gas.pressure, gas.temperature, gas.gas_constant, heat_capacity_ratio(gas), behind, w.band);
+      r.capacity =
+          info.area * info.discharge_coefficient *
+          nozzle_flux(gas.pressure, gas.temperature, gas.gas_constant, heat_capacity_ratio(gas), behind, w.band);
     }
     if (opening <= 0.0 && gas.pressure < info.set_pressure) continue;
     // What else raises the pressure, as a flow of this gas: the relief device's own share is added back.
-    const PressureSlopes<double> slope = layout.mixture.pressure_slopes(gas, w.space_mass(info.space), w.volume[info.space]);
+    const PressureSlopes<double> slope =
+        layout.mixture.pressure_slopes(gas, w.space_mass(info.space), w.volume[info.space]);
     const double total = w.total_mass(info.space);
     double per_mass = slope.by_energy * gas.enthalpy;
     for (int k = 0; k < w.species_count; ++k) per_mass += slope.by_mass[k] * w.space_mass(info.space)[k] / total;
@@ -147,7 +150,8 @@ void ExtremeTracker::piece(const DenseStep& step, double from, double to) {
   const std::size_t n = limits.size();
   std::vector<double> before(n), here(n);
   std::vector<double> times;
-  for (int s = 0; s <= samples_per_piece; ++s) times.push_back(s == samples_per_piece ? to : from + (to - from) * s / samples_per_piece);
+  for (int s = 0; s <= samples_per_piece; ++s)
+    times.push_back(s == samples_per_piece ? to : from + (to - from) * s / samples_per_piece);
   std::vector<std::vector<double>> values(times.size(), std::vector<double>(n));
   for (std::size_t s = 0; s < times.size(); ++s) {
     step.interpolate(times[s], y_.data());

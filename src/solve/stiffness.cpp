@@ -7,8 +7,8 @@ namespace gaskettle {
 namespace {
 constexpr double noise_share = 1e-3;  // keeps every direction alive when the largest eigenvalue changes
 constexpr double memory = 0.7;
-// The explicit pair is stable to h |lambda| = 3.3; below 2 its steps follow accuracy, not stability. Rates that level off
-// (flow between nearly equal pressures) let it swing for ever within the tolerance, with an apparent 2.3 to 2.5.
+// The explicit pair is stable to h |lambda| = 3.3; below 2 its steps follow accuracy, not stability. Rates that level
+// off (flow between nearly equal pressures) let it swing for ever within the tolerance, with an apparent 2.3 to 2.5.
 constexpr double easy_speed = 1.5, hard_speed = 2.0;
 constexpr int hard_steps = 15, forgiving_steps = 6, most_patience = 640;
 }  // namespace

@@ -10,7 +10,7 @@
 namespace gaskettle::testing {
 
 struct ModelRun {
-  std::string problems;   ///< what the reader refused; empty where it ran
+  std::string problems;  ///< what the reader refused; empty where it ran
   CaseResult result;
   std::vector<double> time;                            ///< s
   std::map<std::string, std::vector<double>> channel;  ///< every channel of the record, SI

@@ -10,8 +10,9 @@ using namespace gaskettle;
 using namespace gaskettle::testing;
 
 namespace {
-const std::vector<std::string> files = {"models/bakeout_chamber.yaml", "models/blocked_in_bottle.yaml", "models/bottle_fill.yaml",
-                                        "models/gas_accumulator.yaml", "models/gas_spring.yaml",        "models/stirred_ram.yaml",
+const std::vector<std::string> files = {"models/bakeout_chamber.yaml", "models/blocked_in_bottle.yaml",
+                                        "models/bottle_fill.yaml",     "models/gas_accumulator.yaml",
+                                        "models/gas_spring.yaml",      "models/stirred_ram.yaml",
                                         "configs/heavy_load.yaml",     "configs/hot_day.yaml"};
 
 /// Largest size that a ledger term had in a run: the scale on which its error counts.
@@ -103,7 +104,8 @@ TEST_CASE("a stay that ends inside a long step is still noticed", "[models][book
   // With large steps the band is entered, and the stay of 5 min is over, within one step of the stiff method.
   const Folder folder;
   for (const std::string rtol : {"1e-5", "1e-7"}) {
-    const Ran ran = gaskettle_in(folder, {"run", shipped("models/bottle_fill.yaml"), "--json", "--overwrite", "--set", "run.method=stiff", "--set", "run.rtol=" + rtol});
+    const Ran ran = gaskettle_in(folder, {"run", shipped("models/bottle_fill.yaml"), "--json", "--overwrite", "--set",
+                                          "run.method=stiff", "--set", "run.rtol=" + rtol});
     CAPTURE(rtol, ran.err);
     REQUIRE(ran.status == 0);
     const Json a = ran.json();

@@ -60,12 +60,13 @@ TEST_CASE("run prints its answer in the order it promises, and nothing else", "[
   const Folder folder;
   const Ran ran = gaskettle_in(folder, {"run", shipped("models/bakeout_chamber.yaml")});
   CHECK(ran.status == 0);
-  CHECK(ran.err.empty());                    // no progress line on a file or pipe
+  CHECK(ran.err.empty());  // no progress line on a file or pipe
   CHECK_FALSE(contains(ran.out, "\r"));
   CHECK_FALSE(contains(ran.out, "\x1b"));
   std::size_t last = 0;
-  for (const std::string heading : {"CAUTION", "limits were kept", "\nTargets\n", "\nLimits\n", "\nRelief devices\n", "\nGas models\n",
-                                    "\nEvents", "\nWhere the energy went\n", "\nWhere the effort was lost", "\nBookkeeping", "\nRecord: "}) {
+  for (const std::string heading :
+       {"CAUTION", "limits were kept", "\nTargets\n", "\nLimits\n", "\nRelief devices\n", "\nGas models\n", "\nEvents",
+        "\nWhere the energy went\n", "\nWhere the effort was lost", "\nBookkeeping", "\nRecord: "}) {
     CAPTURE(heading);
     const std::size_t here = ran.out.find(heading);
     REQUIRE(here != std::string::npos);
@@ -82,7 +83,8 @@ TEST_CASE("cautions appear where they apply", "[commands]") {
   const Folder folder;
   const auto cautions = [&](const std::string& model) {
     write_text(folder / "m.yaml", model);
-    const Ran ran = gaskettle_in(folder, {"run", "m.yaml", "--overwrite"}), checked = gaskettle_in(folder, {"check", "m.yaml"});
+    const Ran ran = gaskettle_in(folder, {"run", "m.yaml", "--overwrite"}),
+              checked = gaskettle_in(folder, {"check", "m.yaml"});
     CHECK(ran.status == 0);
     CHECK(checked.status == 0);
     const auto of = [](const std::string& text) { return text.substr(0, text.find("\n\n")); };
@@ -90,14 +92,19 @@ TEST_CASE("cautions appear where they apply", "[commands]") {
     return of(ran.out);
   };
   const std::string head = "gaskettle: 1\ntitle: t\n", run = "run: {until: 10 s}\n";
-  const std::string plain = cautions(head + "gas_spaces: {can: {volume: 1 l, gas: nitrogen, temperature: 20 degC, pressure: 2 bar abs}}\n" + run);
+  const std::string plain = cautions(
+      head + "gas_spaces: {can: {volume: 1 l, gas: nitrogen, temperature: 20 degC, pressure: 2 bar abs}}\n" + run);
   CHECK(contains(plain, "No limit was checked"));
   CHECK_FALSE(contains(plain, "xygen"));
   CHECK_FALSE(contains(plain, "discharged"));
   CHECK_FALSE(contains(plain, "ISO 4126"));
-  const std::string rich = cautions(head + "gas_spaces: {can: {volume: 1 l, gas: {oxygen: 0.24, nitrogen: 0.76}, temperature: 20 degC, pressure: 2 bar abs}}\n"
-                                    "ports: {vent: {from: can, to: atmosphere, orifice: {bore: 1 mm, discharge_coefficient: 0.8}}}\n"
-                                    "limits: {high: {of: can.pressure, below: 3 bar abs}}\n" + run);
+  const std::string rich =
+      cautions(head +
+               "gas_spaces: {can: {volume: 1 l, gas: {oxygen: 0.24, nitrogen: 0.76}, temperature: 20 degC, pressure: 2 "
+               "bar abs}}\n"
+               "ports: {vent: {from: can, to: atmosphere, orifice: {bore: 1 mm, discharge_coefficient: 0.8}}}\n"
+               "limits: {high: {of: can.pressure, below: 3 bar abs}}\n" +
+               run);
   CHECK(contains(rich, "Oxygen above 23.5 %"));
   CHECK(contains(rich, "discharged"));
   CHECK_FALSE(contains(rich, "No limit was checked"));
@@ -139,7 +146,8 @@ TEST_CASE("run finds a configuration's model from any folder", "[commands]") {
   const Folder folder;
   for (const std::string& where : {folder.path(), std::string("/"), shipped("configs")}) {
     CAPTURE(where);
-    const Ran ran = gaskettle_in(where, {"run", shipped("configs/heavy_load.yaml"), "-o", folder / "heavy.h5", "--overwrite"});
+    const Ran ran =
+        gaskettle_in(where, {"run", shipped("configs/heavy_load.yaml"), "-o", folder / "heavy.h5", "--overwrite"});
     CHECK(ran.status == 0);
   }
   const Ran relative = gaskettle_in(shipped("configs"), {"run", "heavy_load.yaml", "-o", folder / "heavy.h5"});
@@ -160,15 +168,16 @@ TEST_CASE("settings of the command line go over those of the file", "[commands]"
   };
   const double once = time({});
   CHECK(time({"--set", "stirrers.mixer.torque=2.4 N m"}) == Approx(once / 2).epsilon(1e-6));
-  CHECK(time({"--set", "stirrers.mixer.torque=9 N m", "--set", "stirrers.mixer.torque=2.4 N m"}) == Approx(once / 2).epsilon(1e-6));
+  CHECK(time({"--set", "stirrers.mixer.torque=9 N m", "--set", "stirrers.mixer.torque=2.4 N m"}) ==
+        Approx(once / 2).epsilon(1e-6));
 }
 
 // ---- check ----
 
 TEST_CASE("check says what the plant is and writes nothing", "[commands]") {
   const std::string text = out_of({"check", shipped("models/bakeout_chamber.yaml")});
-  for (const std::string part : {"gas mass", "p V", "stored energy", "heat capacity", "Biot number", "conduction nodes", "Time constants",
-                                 "Defaults in use", "not a design approval"}) {
+  for (const std::string part : {"gas mass", "p V", "stored energy", "heat capacity", "Biot number", "conduction nodes",
+                                 "Time constants", "Defaults in use", "not a design approval"}) {
     CAPTURE(part);
     CHECK(contains(text, part));
   }
@@ -181,7 +190,9 @@ TEST_CASE("check says what the plant is and writes nothing", "[commands]") {
 
 TEST_CASE("check and run refuse the same input with the same words", "[commands]") {
   const Folder folder;
-  write_text(folder / "bad.yaml", "gaskettle: 1\ntitle: t\ngas_spaces: {can: {volume: 1 m, gas: nitrogn, temperature: 20, pressure: 14 bar}}\nrun: {until: 1 s}\n");
+  write_text(folder / "bad.yaml",
+             "gaskettle: 1\ntitle: t\ngas_spaces: {can: {volume: 1 m, gas: nitrogn, temperature: 20, pressure: 14 "
+             "bar}}\nrun: {until: 1 s}\n");
   const Ran run = gaskettle_in(folder, {"run", "bad.yaml"}), check = gaskettle_in(folder, {"check", "bad.yaml"});
   CHECK(run.status == 2);
   CHECK(check.status == 2);
@@ -230,7 +241,8 @@ TEST_CASE("export prints columns with units, chosen channels, and even steps", "
   CHECK(contains(rows[0], "cylinder.temperature [K]"));
   CHECK(contains(rows[0], "mixer.speed [rad s-1]"));
 
-  const Ran two = gaskettle_in(folder, {"export", "stirred_ram.h5", "--channels", "ram.position,cylinder.pressure", "--every", "10 s"});
+  const Ran two = gaskettle_in(
+      folder, {"export", "stirred_ram.h5", "--channels", "ram.position,cylinder.pressure", "--every", "10 s"});
   REQUIRE(two.status == 0);
   const std::vector<std::string> few = lines(two.out);
   CHECK(few[0] == "time [s],ram.position [m],cylinder.pressure [Pa]");
@@ -259,7 +271,8 @@ TEST_CASE("export prints columns with units, chosen channels, and even steps", "
 // ---- gas ----
 
 TEST_CASE("gas prints nitrogen at 300 K as it is published", "[commands]") {
-  const Json gas = Json::parse(out_of({"gas", "nitrogen", "--temperature", "300 K", "--pressure", "1 bar abs", "--json"}));
+  const Json gas =
+      Json::parse(out_of({"gas", "nitrogen", "--temperature", "300 K", "--pressure", "1 bar abs", "--json"}));
   const Json ideal = gas.at("ideal");
   const auto value = [&](const char* key) { return ideal.at(key).get<double>(); };
   const double M = 0.0280134;
@@ -278,8 +291,8 @@ TEST_CASE("gas prints nitrogen at 300 K as it is published", "[commands]") {
   CHECK(value("energy") == Approx(value("enthalpy") - R * 300.0).epsilon(1e-5));
   CHECK(value("sound_speed") == Approx(std::sqrt(value("cp") / value("cv") * R * 300.0)).epsilon(1e-5));
   CHECK(value("joule_thomson") == 0.0);
-  // E. W. Lemmon and R. T. Jacobsen, Int. J. Thermophys. 25 (2004) 21, table 5, dilute nitrogen at 300 K: 17.8771 uPa s and
-  // 25.9361 mW/m/K, both to 2 %.
+  // E. W. Lemmon and R. T. Jacobsen, Int. J. Thermophys. 25 (2004) 21, table 5, dilute nitrogen at 300 K: 17.8771 uPa s
+  // and 25.9361 mW/m/K, both to 2 %.
   CHECK(value("viscosity") == Approx(17.8771e-6).epsilon(0.02));
   CHECK(value("conductivity") == Approx(25.9361e-3).epsilon(0.02));
 
@@ -299,10 +312,14 @@ TEST_CASE("gas takes a density by mass or mole, formulas, and other units", "[co
   const Json p = ideal({"--temperature", "300 K", "--pressure", "1 bar abs"});
   const auto pressure = [](const Json& j) { return j.at("pressure").get<double>(); };
   // p = rho R T, R = 296.803 J/kg/K
-  CHECK(pressure(ideal({"--temperature", "300 K", "--density", "11 kg/m3"})) == Approx(11.0 * 296.803 * 300.0).epsilon(1e-5));
-  CHECK(pressure(ideal({"--temperature", "300 K", "--density", "400 mol/m3"})) == Approx(400.0 * 8.314463 * 300.0).epsilon(1e-5));
-  CHECK(pressure(ideal({"--temperature", "26.85 degC", "--pressure", "0 bar gauge"})) == Approx(101325.0).epsilon(1e-12));
-  CHECK(ideal({"--temperature", "26.85 degC", "--pressure", "1000 mbar abs"})["cp"].get<double>() == Approx(p["cp"].get<double>()).epsilon(1e-12));
+  CHECK(pressure(ideal({"--temperature", "300 K", "--density", "11 kg/m3"})) ==
+        Approx(11.0 * 296.803 * 300.0).epsilon(1e-5));
+  CHECK(pressure(ideal({"--temperature", "300 K", "--density", "400 mol/m3"})) ==
+        Approx(400.0 * 8.314463 * 300.0).epsilon(1e-5));
+  CHECK(pressure(ideal({"--temperature", "26.85 degC", "--pressure", "0 bar gauge"})) ==
+        Approx(101325.0).epsilon(1e-12));
+  CHECK(ideal({"--temperature", "26.85 degC", "--pressure", "1000 mbar abs"})["cp"].get<double>() ==
+        Approx(p["cp"].get<double>()).epsilon(1e-12));
   const Folder folder;
   const Ran wrong = gaskettle_in(folder, {"gas", "nitrogn", "--temperature", "300 K", "--pressure", "1 bar abs"});
   CHECK(wrong.status == 2);
@@ -318,17 +335,33 @@ TEST_CASE("explain knows every section and key", "[commands][explain]") {
       {"surroundings", {"temperature", "pressure", "gravity", "wind", "gas"}},
       {"gases", {"molar_mass", "cp", "viscosity", "conductivity"}},
       {"materials", {"density", "specific_heat", "conductivity", "emissivity"}},
-      {"gas_spaces", {"volume", "shape", "cylinder", "bore", "length", "ends", "axis", "sphere", "gas", "temperature", "pressure", "mass", "count"}},
-      {"walls", {"around", "area", "layers", "material", "thickness", "contact", "bridges", "temperature", "inside", "outside", "film", "emissivity", "flux", "to", "space"}},
-      {"bodies", {"in", "mass", "material", "specific_heat", "area", "film", "emissivity", "half_thickness", "count", "temperature"}},
-      {"heaters", {"in", "wall", "after_layer", "body", "rating", "power", "heat_capacity", "conductance", "area", "emissivity", "temperature"}},
+      {"gas_spaces",
+       {"volume", "shape", "cylinder", "bore", "length", "ends", "axis", "sphere", "gas", "temperature", "pressure",
+        "mass", "count"}},
+      {"walls",
+       {"around", "area", "layers", "material", "thickness", "contact", "bridges", "temperature", "inside", "outside",
+        "film", "emissivity", "flux", "to", "space"}},
+      {"bodies",
+       {"in", "mass", "material", "specific_heat", "area", "film", "emissivity", "half_thickness", "count",
+        "temperature"}},
+      {"heaters",
+       {"in", "wall", "after_layer", "body", "rating", "power", "heat_capacity", "conductance", "area", "emissivity",
+        "temperature"}},
       {"stirrers", {"in", "power", "torque", "speed", "power_number", "diameter"}},
-      {"pistons", {"closes", "bore", "area", "at", "mass", "motion", "velocity", "position", "flow", "stops", "restitution", "tilt", "spring", "stiffness", "free_at",
-                   "friction", "breakaway", "kinetic", "viscous", "stribeck_velocity", "heat_to", "force", "back", "pressure", "space"}},
-      {"ports", {"from", "to", "orifice", "bore", "area", "discharge_coefficient", "flow", "iso6358", "C", "b", "iec60534", "opening", "one_way"}},
-      {"relief_devices", {"protects", "to", "flow_area", "discharge_coefficient", "set", "reseat", "blowdown", "action", "full_lift_at", "balanced", "burst"}},
+      {"pistons", {"closes",      "bore",      "area",     "at",        "mass",
+                   "motion",      "velocity",  "position", "flow",      "stops",
+                   "restitution", "tilt",      "spring",   "stiffness", "free_at",
+                   "friction",    "breakaway", "kinetic",  "viscous",   "stribeck_velocity",
+                   "heat_to",     "force",     "back",     "pressure",  "space"}},
+      {"ports",
+       {"from", "to", "orifice", "bore", "area", "discharge_coefficient", "flow", "iso6358", "C", "b", "iec60534",
+        "opening", "one_way"}},
+      {"relief_devices",
+       {"protects", "to", "flow_area", "discharge_coefficient", "set", "reseat", "blowdown", "action", "full_lift_at",
+        "balanced", "burst"}},
       {"sensors", {"reads", "time_constant", "offset", "range", "resolution"}},
-      {"controllers", {"drives", "holds", "at", "action", "by", "on_off", "dead_band", "pi", "gain", "reset_time", "pid"}},
+      {"controllers",
+       {"drives", "holds", "at", "action", "by", "on_off", "dead_band", "pi", "gain", "reset_time", "pid"}},
       {"targets", {"when", "reaches", "direction", "after", "settles_within", "of", "for"}},
       {"limits", {"of", "minus", "rate_of", "below", "above", "design", "accumulation"}},
       {"run", {"until", "record_every", "rtol", "method", "stop_when"}},
@@ -341,7 +374,8 @@ TEST_CASE("explain knows every section and key", "[commands][explain]") {
     for (const std::string& key : list) {
       CAPTURE(key);
       // Its own entry, the last word of a dotted line; in the overview the first word of an indented one.
-      const bool listed = section.empty() ? contains(of_section, "\n  " + key + " ") : contains(of_section, "." + key + "\n");
+      const bool listed =
+          section.empty() ? contains(of_section, "\n  " + key + " ") : contains(of_section, "." + key + "\n");
       CHECK(listed);
       CHECK_FALSE(out_of({"explain", key}).empty());
     }
@@ -349,11 +383,13 @@ TEST_CASE("explain knows every section and key", "[commands][explain]") {
 }
 
 TEST_CASE("explain knows every gas, material, film, unit and quantity", "[commands][explain]") {
-  for (const std::string gas : {"nitrogen", "oxygen", "argon", "helium", "hydrogen", "carbon_dioxide", "methane", "air", "water", "N2"}) {
+  for (const std::string gas :
+       {"nitrogen", "oxygen", "argon", "helium", "hydrogen", "carbon_dioxide", "methane", "air", "water", "N2"}) {
     CAPTURE(gas);
     CHECK(contains(out_of({"explain", gas}), "g/mol"));
   }
-  for (const std::string material : {"carbon_steel", "stainless_steel", "aluminium", "copper", "brass", "mineral_wool", "glass_wool", "calcium_silicate"}) {
+  for (const std::string material : {"carbon_steel", "stainless_steel", "aluminium", "copper", "brass", "mineral_wool",
+                                     "glass_wool", "calcium_silicate"}) {
     CAPTURE(material);
     CHECK(contains(out_of({"explain", material}), "source:"));
   }
@@ -361,17 +397,21 @@ TEST_CASE("explain knows every gas, material, film, unit and quantity", "[comman
     CAPTURE(film);
     CHECK(contains(out_of({"explain", film}), "source:"));
   }
-  for (const std::string unit : {"pressure", "temperature", "speed of rotation", "gas flow", "film coefficient", "length"}) {
+  for (const std::string unit :
+       {"pressure", "temperature", "speed of rotation", "gas flow", "film coefficient", "length"}) {
     CAPTURE(unit);
     CHECK(contains(out_of({"explain", unit}), "in records:"));
   }
-  for (const std::string quantity : {"wall_loss", "boundary_work", "stored", "lifting", "throttling", "mixing", "sudden"}) {
+  for (const std::string quantity :
+       {"wall_loss", "boundary_work", "stored", "lifting", "throttling", "mixing", "sudden"}) {
     CAPTURE(quantity);
     CHECK_FALSE(out_of({"explain", quantity}).empty());
   }
-  for (const std::string list : {"gases", "materials", "films", "units", "quantities"}) CHECK(lines(out_of({"explain", list})).size() > 5);
+  for (const std::string list : {"gases", "materials", "films", "units", "quantities"})
+    CHECK(lines(out_of({"explain", list})).size() > 5);
   // Words a reader of a model or record looks up: a unit as it is written, a channel by its quantity.
-  for (const std::string word : {"bar", "rpm", "W/m2/K", "degC", "mole_fraction", "specific_entropy", "outer_temperature", "profile", "schedule", "ramp", "sine", "supply"}) {
+  for (const std::string word : {"bar", "rpm", "W/m2/K", "degC", "mole_fraction", "specific_entropy",
+                                 "outer_temperature", "profile", "schedule", "ramp", "sine", "supply"}) {
     const Folder folder;
     CAPTURE(word);
     CHECK(gaskettle_in(folder, {"explain", word}).status == 0);
@@ -380,8 +420,12 @@ TEST_CASE("explain knows every gas, material, film, unit and quantity", "[comman
 
 TEST_CASE("explain suggests the nearest word", "[commands][explain]") {
   const Folder folder;
-  for (const auto& [wrong, right] : std::vector<std::pair<std::string, std::string>>{
-           {"nitrogne", "nitrogen"}, {"heatres", "heaters"}, {"stired", "stirred"}, {"relief_device", "relief_devices"}, {"carbon_stel", "carbon_steel"}}) {
+  for (const auto& [wrong, right] :
+       std::vector<std::pair<std::string, std::string>>{{"nitrogne", "nitrogen"},
+                                                        {"heatres", "heaters"},
+                                                        {"stired", "stirred"},
+                                                        {"relief_device", "relief_devices"},
+                                                        {"carbon_stel", "carbon_steel"}}) {
     const Ran ran = gaskettle_in(folder, {"explain", wrong});
     CAPTURE(wrong, ran.err);
     CHECK(ran.status == 2);

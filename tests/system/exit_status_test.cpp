@@ -105,7 +105,8 @@ TEST_CASE("exit status 4: a target was not reached", "[exit]") {
 
 TEST_CASE("exit status 3 wins over 4", "[exit]") {
   const Folder folder;
-  const Ran ran = gaskettle_in(folder, {"run", ram, "--json", "--set", "targets.top.reaches=560 mm", "--set", "limits.gas_hot.below=100 degC"});
+  const Ran ran = gaskettle_in(
+      folder, {"run", ram, "--json", "--set", "targets.top.reaches=560 mm", "--set", "limits.gas_hot.below=100 degC"});
   CHECK(ran.status == 3);
   CHECK(ran.json()["targets"][0]["reached"] == false);
 }

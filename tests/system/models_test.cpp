@@ -74,8 +74,8 @@ TEST_CASE("stirred ram: stroke, heat and entropy in closed form", "[models]") {
 TEST_CASE("gas spring: the swing by a second hand, stop included", "[models]") {
   const Answered a("models/gas_spring.yaml");
   check_all_well(a);
-  // By hand: air with gamma = 1.4 (the data give 1.400 to 1.402 here) in no wall, atmosphere and weight, Coulomb, Stribeck
-  // (exponent 2) and viscous friction whose heat stays in the gas, restitution 0.4 at the low stop.
+  // By hand: air with gamma = 1.4 (the data give 1.400 to 1.402 here) in no wall, atmosphere and weight, Coulomb,
+  // Stribeck (exponent 2) and viscous friction whose heat stays in the gas, restitution 0.4 at the low stop.
   const double area = circle(0.12), V0 = 4.5e-3, p0 = 0.3 * bar + atmosphere, mass = 90.0, stop = 0.265;
   using State = std::array<double, 3>;  // position, velocity, internal energy
   const auto pressure = [&](const State& y) { return 0.4 * y[2] / (V0 + area * (y[0] - 0.38)); };
@@ -97,8 +97,10 @@ TEST_CASE("gas spring: the swing by a second hand, stop included", "[models]") {
       impact += 0.5 * mass * y[1] * y[1] * (1 - 0.4 * 0.4);
       y[1] *= -0.4;
     } else if (v * y[1] < 0) {  // the breakaway force of 60 N holds it, or not
-      if (std::abs(net(y)) < 60.0) stuck = t;
-      else turns.push_back(t);
+      if (std::abs(net(y)) < 60.0)
+        stuck = t;
+      else
+        turns.push_back(t);
     }
   }
   REQUIRE(hit > 0);
@@ -134,7 +136,8 @@ TEST_CASE("gas accumulator: the cycle by a second hand", "[models]") {
   const auto volume = [&](double t) { return V0 - 1e-3 * (std::min(t, 5.0) - std::clamp(t - 65.0, 0.0, 5.0)); };
   const auto gas = [&](double t, const std::array<double, 1>& T) {
     const double V = volume(t), wetted = std::numbers::pi * bore * V / area + 2 * area;
-    return std::array<double, 1>{(120.0 * wetted * (T0 - T[0]) - mass * nitrogen_R * T[0] / V * flow(t + 1e-9)) / (mass * cv)};
+    return std::array<double, 1>{(120.0 * wetted * (T0 - T[0]) - mass * nitrogen_R * T[0] / V * flow(t + 1e-9)) /
+                                 (mass * cv)};
   };
   std::array<double, 1> T = {T0};
   double hottest = 0, peak = 0, rested = 0;
@@ -201,7 +204,8 @@ TEST_CASE("blocked-in bottle: the metal's own clock, relief cycles, and a whole 
   const double start_mass = a.channel("bottle.mass").front();
   CHECK(valve["released"].get<double>() > (1 - left_most) * start_mass);
   CHECK(valve["released"].get<double>() < (1 - left_least) * start_mass);
-  const double fewest = std::log(left_most) / std::log(55.01 / 61.01), greatest_number = std::log(left_least) * 1.4 / std::log(55.01 / 61.01);
+  const double fewest = std::log(left_most) / std::log(55.01 / 61.01),
+               greatest_number = std::log(left_least) * 1.4 / std::log(55.01 / 61.01);
   CHECK(valve["lifts"].get<double>() >= std::floor(fewest));
   CHECK(valve["lifts"].get<double>() <= std::ceil(greatest_number));
   CHECK(count_events(a.json, "valve", "lifts") == valve["lifts"].get<long>());
@@ -250,8 +254,8 @@ TEST_CASE("bake-out chamber: warm-up, pressure and losses", "[models]") {
   const double rack = body_reaches(t, gas, start + zero_celsius, 40.0 * 880.0 / 66.0, 145.0 + zero_celsius);
   CHECK(a.target_time("rack_hot") == Approx(rack).margin(0.1));
   // Gas is in its band when the ramp of 2 K/min has brought it to 148 degC at the earliest. After that the loop
-  // (177 kJ/K of gas, rack and steel; gain 400 W/K; reset 600 s: natural period 54 min, damping 0.58) swings once, and with
-  // the heater off 430 W of net loss take 4 K in half an hour: within two hours of the start.
+  // (177 kJ/K of gas, rack and steel; gain 400 W/K; reset 600 s: natural period 54 min, damping 0.58) swings once, and
+  // with the heater off 430 W of net loss take 4 K in half an hour: within two hours of the start.
   const double hot = a.target_time("hot");
   CHECK(hot > (148.0 - start) / 2.0 * 60.0);
   CHECK(hot < 7200.0);
@@ -267,9 +271,9 @@ TEST_CASE("bake-out chamber: warm-up, pressure and losses", "[models]") {
   // Steel follows the gas behind a film: never hotter than the hottest gas, but for the element's radiation onto it,
   // 0.35 m2 at 616 K: 0.82 * 5.67e-8 * 0.35 * (616^4 - 430^4) W = 1.8 kW over 4 m2 with 30 W/m2/K: 15 K.
   CHECK(a.extreme("shell_metal") < greatest(gas) + 15.0);
-  // Held at 150 degC: heater and fan cover the loss; the last wool has a time constant of 80^2 mm2 / (pi^2 * 5e-7 m2/s) =
-  // 20 min, passed ten times. By hand 0.046 W/m/K * 4.5 m2 / 80 mm + 1.5 W/K of bridges = 4.1 W/K over 130 K, less 3 K
-  // or so in the films: 520 W on a cold day, 15 % for the wool's mean conductivity and the films.
+  // Held at 150 degC: heater and fan cover the loss; the last wool has a time constant of 80^2 mm2 / (pi^2 * 5e-7 m2/s)
+  // = 20 min, passed ten times. By hand 0.046 W/m/K * 4.5 m2 / 80 mm + 1.5 W/K of bridges = 4.1 W/K over 130 K, less 3
+  // K or so in the films: 520 W on a cold day, 15 % for the wool's mean conductivity and the films.
   const double loss = a.end("shell.loss");
   CHECK(a.end("element.power") + a.end("fan.power") == Approx(loss).epsilon(0.01));
   CHECK(loss == Approx(4.1 * (150.0 - (start == 20.0 ? 20.0 : 38.0)) * 0.97).epsilon(0.15));

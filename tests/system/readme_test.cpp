@@ -45,7 +45,8 @@ struct Workplace {
   fs::path folder = fs::temp_directory_path() / ("gaskettle_readme_" + std::to_string(::getpid()));
   Workplace() {
     fs::create_directories(folder / "build");
-    for (const char* name : {"models", "configs"}) fs::create_directory_symlink(fs::path(GASKETTLE_SOURCE_DIR) / name, folder / name);
+    for (const char* name : {"models", "configs"})
+      fs::create_directory_symlink(fs::path(GASKETTLE_SOURCE_DIR) / name, folder / name);
     fs::create_symlink(GASKETTLE_PROGRAM, folder / "build/gaskettle");
   }
   ~Workplace() { fs::remove_all(folder); }
@@ -111,7 +112,9 @@ TEST_CASE("the README's notebook lines open the record") {
   std::string script;
   for (const std::string& line : lines_of(python[0]))
     if (line.find(".plot()") == std::string::npos) script += line + "\n";
-  script += "assert float(run['cylinder.temperature'][-1]) > 390.0\nassert 'target reached' in [str(w) for w in events['what'].values]\n";
+  script +=
+      "assert float(run['cylinder.temperature'][-1]) > 390.0\nassert 'target reached' in [str(w) for w in "
+      "events['what'].values]\n";
   const Workplace here;
   REQUIRE(here.run("build/gaskettle run models/stirred_ram.yaml").first == 0);
   std::ofstream(here.folder / "notebook.py") << script;

@@ -205,8 +205,10 @@ TEST_CASE("the JSON answer has the record's numbers", "[record]") {
   // Both are written from the same doubles, and the shortest decimals that read back the same: equal to the last bit.
   for (const TargetRow& t : outcome.targets) {
     const Json j = named(a["targets"], t.name);
-    if (std::isnan(t.time)) CHECK(j["time"].is_null());
-    else CHECK(j["time"].get<double>() == t.time);
+    if (std::isnan(t.time))
+      CHECK(j["time"].is_null());
+    else
+      CHECK(j["time"].get<double>() == t.time);
   }
   for (const LimitRow& l : outcome.limits) {
     const Json j = named(a["limits"], l.name);
@@ -227,10 +229,12 @@ TEST_CASE("the JSON answer has the record's numbers", "[record]") {
     REQUIRE(record.has_channel(name));
     CHECK(record.channel(name).back() == value.get<double>());
   }
-  for (const std::string term : {"heater", "shaft", "wall_loss", "enthalpy_in", "enthalpy_out", "boundary_work", "stored"}) {
+  for (const std::string term :
+       {"heater", "shaft", "wall_loss", "enthalpy_in", "enthalpy_out", "boundary_work", "stored"}) {
     CAPTURE(term);
     // Sums in another order: rounding.
-    CHECK(record.channel("energy." + term).back() == Approx(a["energy"][term].get<double>()).epsilon(1e-11).margin(1e-9));
+    CHECK(record.channel("energy." + term).back() ==
+          Approx(a["energy"][term].get<double>()).epsilon(1e-11).margin(1e-9));
   }
   for (const auto& [name, value] : outcome.attributes)
     if (name == "closure_energy" || name == "closure_mass") CHECK(a[name].get<double>() == std::get<double>(value));
