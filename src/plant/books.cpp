@@ -71,6 +71,13 @@ void close_mass(const Plant& plant, const double* y, Books& b) {
   }
 }
 
+/// J; no less than a piston's greatest kinetic energy where stops took it.
+double lost_at_stops(const Layout& layout, const std::string& piston, const double* y) {
+  for (const auto& e : layout.ledger_entries)
+    if (e.term == LedgerTerm::impact && e.part == piston) return y[e.state];
+  return 0.0;
+}
+
 void compare_work(const Plant& plant, const Workspace<double>& w, Books& b) {
   for (const Piston& p : std::get<std::vector<Piston>>(plant.model().parts)) {
     if (p.has_spring()) {
@@ -80,8 +87,8 @@ void compare_work(const Plant& plant, const Workspace<double>& w, Books& b) {
     }
     if (p.kinetic_comparable()) {
       const double start = p.kinetic_energy_at_start(), now = p.kinetic_energy(w) + p.kinetic_carried_away();
-      b.work.push_back(
-          {"kinetic energy of " + p.name, w.y[p.kinetic_entry()], now - start, p.greatest_kinetic_energy()});
+      b.work.push_back({"kinetic energy of " + p.name, w.y[p.kinetic_entry()], now - start,
+                        std::max(p.greatest_kinetic_energy(), lost_at_stops(plant.layout(), p.name, w.y))});
     }
   }
 }

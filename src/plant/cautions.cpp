@@ -48,7 +48,7 @@ std::vector<std::string> cautions(const Plant& plant) {
     list.emplace_back("Oxygen above 23.5 %: ignition by compression heating, friction or particles is not assessed.");
   const bool discharges = layout.discharges_to_atmosphere;
   if (discharges)
-    list.emplace_back("Gas is discharged: asphyxiation, toxicity, noise, cold and thrust are not assessed.");
+    list.emplace_back("Gas may be discharged: asphyxiation, toxicity, noise, cold and thrust are not assessed.");
   return list;
 }
 

@@ -55,14 +55,16 @@ std::string limits_block(const CaseResult& r, const Presenter& p) {
 std::string reliefs_block(const CaseResult& r, const Presenter& p) {
   if (r.reliefs.empty()) return "";
   const UnitKind flow{"mass flow", "kg s-1"};
-  std::vector<std::vector<std::string>> rows = {
-      {"device", "lifts", "greatest lift", "peak inlet pressure", "over set", "capacity there", "needed", "released"}};
+  std::vector<std::vector<std::string>> rows = {{"device", "lifts", "greatest lift", "peak inlet pressure",
+                                                 "against set", "capacity there", "needed", "released"}};
   for (const ReliefOutcome& o : r.reliefs)
     rows.push_back({o.name, o.disc ? (o.lifts > 0 ? "burst" : "whole") : std::to_string(o.lifts),
                     fmt::format("{:.0f} %", 100.0 * o.greatest_opening),
                     p.show(o.peak_pressure, unit_kinds::pressure, "bar gauge"),
-                    fmt::format("{:+.2f} %", 100.0 * o.accumulation), p.scaled(o.capacity, flow),
-                    o.needed > 0.0 ? p.scaled(o.needed, flow) : "-", p.scaled(o.released, unit_kinds::mass)});
+                    o.accumulation < 0.0 ? fmt::format("{:.2f} % below", -100.0 * o.accumulation)
+                                         : fmt::format("+{:.2f} %", 100.0 * o.accumulation),
+                    p.scaled(o.capacity, flow), o.needed > 0.0 ? p.scaled(o.needed, flow) : "-",
+                    o.released > 0.0 ? p.scaled(o.released, unit_kinds::mass) : "none"});
   return "\nRelief devices\n" + table(rows);
 }
 
@@ -125,9 +127,8 @@ std::string bookkeeping_block(const CaseResult& r) {
   if (b.generated > 0.0)
     out += fmt::format("  entropy: {:.6g} J/K generated, unexplained {:.1e} of it\n", b.generated,
                        std::abs(b.entropy_imbalance()) / b.generated);
-  out += fmt::format(
-      "  {} steps ({} stiff, {} explicit), {} rejected, {} rate calls, {} Jacobians, {} events, {:.2g} s\n", s.steps,
-      s.steps_stiff, s.steps_explicit, s.rejected, s.rate_calls, s.jacobians, s.events, r.wall_seconds);
+  out += fmt::format("  {} steps ({} stiff, {} explicit), {} rejected, {} rate calls, {} Jacobians, {:.2g} s\n",
+                     s.steps, s.steps_stiff, s.steps_explicit, s.rejected, s.rate_calls, s.jacobians, r.wall_seconds);
   return out;
 }
 }  // namespace

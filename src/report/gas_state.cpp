@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <array>
 #include <cmath>
 #include <nlohmann/json.hpp>
 
@@ -12,8 +13,8 @@ namespace gaskettle {
 
 GasStateReport ideal_gas_state(const Species& species, double temperature, double pressure) {
   const GasMixture mixture({species});
-  const double one = 1.0;
-  const GasState<double> s = mixture.from_temperature(&one, temperature, pressure);
+  const std::array<double, GasMixture::max_species> pure = {1.0};
+  const GasState<double> s = mixture.from_temperature(pure.data(), temperature, pressure);
   GasStateReport r;
   r.temperature = temperature;
   r.pressure = pressure;

@@ -68,6 +68,32 @@ std::vector<TimeConstant> time_constants(Plant& plant) {
   return list;
 }
 
+/// One line a part: the nodes of a wall or body by their fastest and slowest.
+std::string time_constant_block(const std::vector<TimeConstant>& all, const Presenter& p) {
+  struct Span {
+    std::string part;
+    double fastest, slowest;
+    int nodes;
+  };
+  std::vector<Span> spans;
+  for (const TimeConstant& t : all) {
+    const std::string part = t.store.substr(0, t.store.find(".node"));
+    if (spans.empty() || spans.back().part != part) spans.push_back({part, t.seconds, t.seconds, 0});
+    Span& s = spans.back();
+    s.fastest = std::min(s.fastest, t.seconds);
+    s.slowest = std::max(s.slowest, t.seconds);
+    ++s.nodes;
+  }
+  std::vector<std::vector<std::string>> rows;
+  for (const Span& s : spans) {
+    const std::string fastest = p.scaled(s.fastest, unit_kinds::time);
+    rows.push_back({s.part, s.nodes == 1 ? fastest
+                                         : fmt::format("{} to {} ({} nodes)", fastest,
+                                                       p.scaled(s.slowest, unit_kinds::time), s.nodes)});
+  }
+  return rows.empty() ? "" : "\nTime constants at the start\n" + table(rows);
+}
+
 std::vector<std::string> advice(const Plant& plant) {
   const Layout& layout = plant.layout();
   std::vector<std::string> list = layout.advice;
@@ -105,9 +131,7 @@ std::string facts_text(Plant& plant, const std::string& model_file) {
   }
   std::stable_sort(rows.begin(), rows.end(), [](const auto& a, const auto& b) { return a[0] < b[0]; });
   out += "\nThe plant in numbers\n" + table(rows, {2});
-  std::vector<std::vector<std::string>> times;
-  for (const TimeConstant& t : time_constants(plant)) times.push_back({t.store, p.scaled(t.seconds, unit_kinds::time)});
-  if (!times.empty()) out += "\nTime constants at the start\n" + table(times, {1});
+  out += time_constant_block(time_constants(plant), p);
   out += "\nGas models\n";
   for (const SpaceInfo& s : layout.spaces)
     out += fmt::format("  {}: ideal gas, gas data version {}\n", s.name, gas_data_version());

@@ -113,7 +113,8 @@ Outcome outcome_of(const CaseResult& r) {
                   {"rate_calls", count(s.rate_calls)},
                   {"jacobians", count(s.jacobians)},
                   {"factorisations", count(s.factorisations)},
-                  {"events", count(s.events)}};
+                  {"events", count(s.events)},
+                  {"wall_seconds", r.wall_seconds}};
   return o;
 }
 }  // namespace

@@ -16,7 +16,7 @@ namespace {
 constexpr double integrated = 1e-8;
 }
 
-TEST_CASE("Cengel & Boles 4-3: air compressed slowly at constant temperature from 0.4 to 0.1 m3", "[run][closed]") {
+TEST_CASE("run: Cengel & Boles 4-3: air compressed slowly at constant temperature from 0.4 to 0.1 m3", "[run][closed]") {
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
 surroundings: {pressure: 100 kPa abs}
 gas_spaces: {vessel: {volume: 0.4 m3, gas: book_gas, temperature: 353.15 K, pressure: 100 kPa abs}}
@@ -29,7 +29,7 @@ run: {until: 100 s, rtol: 1e-10, record_every: 10 s}
   CHECK(run.last("vessel.temperature") == Approx(353.15).epsilon(integrated));
 }
 
-TEST_CASE("Cengel & Boles 4-4: heated gas under a piston with a spring, 0.05 to 0.1 m3", "[run][closed]") {
+TEST_CASE("run: Cengel & Boles 4-4: heated gas under a piston with a spring, 0.05 to 0.1 m3", "[run][closed]") {
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
 surroundings: {pressure: 100 kPa abs}
 gas_spaces: {vessel: {volume: 0.05 m3, gas: book_gas, temperature: 300 K}}
@@ -49,7 +49,7 @@ run: {until: 100 s, rtol: 1e-10, record_every: 1 s, stop_when: doubled}
   CHECK(reached(run, "doubled") == Approx((13e3 + (320e3 * 0.1 - 200e3 * 0.05) / 0.4) / 5e3).epsilon(1e-7));
 }
 
-TEST_CASE("Cengel & Boles 4-8: helium stirred in a rigid insulated vessel, 0.02 hp for 30 minutes", "[run][closed]") {
+TEST_CASE("run: Cengel & Boles 4-8: helium stirred in a rigid insulated vessel, 0.02 hp for 30 minutes", "[run][closed]") {
   // 1.5 lbm, 80 F, 50 psia; the book takes cv 0.753 Btu/lbm/R. Volume from R, which the answer does not depend on.
   const double m = 0.680388555, cv = 3152.6604, R = 2077, T1 = 299.8166667, p1 = 344737.8647;
   const std::string stirred = fill(R"(
@@ -68,7 +68,7 @@ run: {until: 1800 s, rtol: 1e-10, record_every: 60 s}
   CHECK(helium.last("vessel.temperature") - T1 == Approx(22.5 / 1.8).epsilon(0.015));
 }
 
-TEST_CASE("Cengel & Boles 4-9: nitrogen heated at constant pressure, 2 A at 120 V for 5 minutes, 2.8 kJ lost",
+TEST_CASE("run: Cengel & Boles 4-9: nitrogen heated at constant pressure, 2 A at 120 V for 5 minutes, 2.8 kJ lost",
           "[run][closed]") {
   const std::string heated = R"(
 surroundings: {pressure: 400 kPa abs}
@@ -85,7 +85,7 @@ run: {until: 300 s, rtol: 1e-10, record_every: 10 s}
   CHECK(run_model("gaskettle: 1\n" + of("nitrogen")).last("vessel.temperature") - 300 == Approx(56.7 - 27).margin(0.1));
 }
 
-TEST_CASE("Cengel & Boles 4-10: gas heated on stops until it lifts its piston, to twice the volume", "[run][closed]") {
+TEST_CASE("run: Cengel & Boles 4-10: gas heated on stops until it lifts its piston, to twice the volume", "[run][closed]") {
   const std::string lifted = R"(
 surroundings: {pressure: 100 kPa abs}
 gas_spaces: {vessel: {volume: 0.4 m3, gas: GAS, temperature: 300 K, pressure: 150 kPa abs}}
@@ -114,7 +114,7 @@ run: {until: 100 s, rtol: 1e-10, record_every: 1 s, stop_when: doubled}
   }
 }
 
-TEST_CASE("Balmer 5.7: helium in a sphere cools for 5 s", "[run][closed]") {
+TEST_CASE("run: Balmer 5.7: helium in a sphere cools for 5 s", "[run][closed]") {
   // 0.1 m, 200 degC, 0.14 MPa, film 3.5 W/m2/K, surroundings at 15 degC. The wall is made to be no obstacle: 1e-8
   // m2 K/W of metal, 1e-9 outside, beside 0.29 in the film.
   const ModelRun run = run_model(book_gas(2077, 2077 + 3123) + R"(
@@ -134,7 +134,7 @@ run: {until: 5 s, rtol: 1e-10, record_every: 0.5 s}
   CHECK(run.last("sphere.temperature") - 273.15 == Approx(32.5).margin(0.05));
 }
 
-TEST_CASE("insulated gas whose outside pressure doubles at once: T2/T1 = 1.2857, all dissipation kept",
+TEST_CASE("run: insulated gas whose outside pressure doubles at once: T2/T1 = 1.2857, all dissipation kept",
           "[run][closed]") {
   // Energy balance cv (T2 - T1) = p2 (v1 - v2), gamma 1.4; reversibly it would be 1.2190.
   const std::string head = book_gas(287, 1004.5) + R"(
@@ -168,7 +168,7 @@ run: {until: 4 s, rtol: 1e-11, record_every: 0.1 s}
   }
 }
 
-TEST_CASE("reversible adiabatic compression to half the volume", "[run][closed]") {
+TEST_CASE("run: reversible adiabatic compression to half the volume", "[run][closed]") {
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
 gas_spaces: {vessel: {volume: 1 m3, gas: book_gas, temperature: 300 K, pressure: 100 kPa abs}}
 pistons: {ram: {closes: vessel, area: 1 m2, at: 1 m, motion: driven, position: {schedule: [[0 s, 1 m], [1 s, 0.5 m]]}}}
@@ -180,7 +180,7 @@ run: {until: 1 s, rtol: 1e-10}
   CHECK(run.last("vessel.specific_entropy") == Approx(run["vessel.specific_entropy"].front()).margin(1e-8 * 717.5));
 }
 
-TEST_CASE("many small loads approach the reversible path", "[run][closed]") {
+TEST_CASE("run: many small loads approach the reversible path", "[run][closed]") {
   // Pressure doubled in n equal loads on an insulated balanced piston. Each obeys T'/T = [1 + (g - 1) p'/p]/g, and
   // the product tends to 2^((g-1)/g) with an excess that goes as 1/n.
   const auto ratio = [](int n) {

@@ -51,19 +51,19 @@ double tau(const ModelRun& run) { return run["vessel.mass"].front() / start_flow
 
 }  // namespace
 
-TEST_CASE("Cengel & Cimbala: a 4 mm hole in a tyre at 314 kPa", "[run][flow]") {
+TEST_CASE("run: Cengel & Cimbala: a 4 mm hole in a tyre at 314 kPa", "[run][flow]") {
   const ModelRun run = empty({0.02, pi / 4 * 16e-6, 1, 314e3, 298, 94e3, 300e3, 1});
   CHECK(start_flow(run) == Approx(0.00923869673).epsilon(closed_form));
   CHECK(start_flow(run) * 60 == Approx(0.554).epsilon(0.002));  // printed, kg/min
 }
 
-TEST_CASE("Balmer 16.12: 20 mm throat at 7 MPa, 2273 K", "[run][flow]") {
+TEST_CASE("run: Balmer 16.12: 20 mm throat at 7 MPa, 2273 K", "[run][flow]") {
   const ModelRun run = empty({10, pi / 4 * 4e-4, 1, 7e6, 2273.15, 1e5, 6.9e6, 10, 286});
   CHECK(start_flow(run) == Approx(1.86754523).epsilon(closed_form));
   CHECK(start_flow(run) == Approx(1.863).epsilon(0.005));  // printed, with the book's constant rounded to 0.0404
 }
 
-TEST_CASE("Balmer 16.8: tyre of 1 ft3 emptied at constant temperature through a 0.0938 in valve", "[run][flow]") {
+TEST_CASE("run: Balmer 16.8: tyre of 1 ft3 emptied at constant temperature through a 0.0938 in valve", "[run][flow]") {
   const double V = 0.02831684659, pa = 101352.9322;
   const double p_unchoked = pa / gaskettle::critical_ratio(1.4);
   const ModelRun run =
@@ -76,7 +76,7 @@ TEST_CASE("Balmer 16.8: tyre of 1 ft3 emptied at constant temperature through a 
   CHECK(reached(run, "fallen") == Approx(18.7).epsilon(0.003));  // printed
 }
 
-TEST_CASE("Farrell: diving cylinder of 11.11 L from 20.68 MPa through 1 mm, choked to 101325 Pa", "[run][flow]") {
+TEST_CASE("run: Farrell: diving cylinder of 11.11 L from 20.68 MPa through 1 mm, choked to 101325 Pa", "[run][flow]") {
   // 10 kPa outside keeps the flow choked down to the end.
   Hole h{0.01111, pi / 4 * 1e-6, 0.85, 20.68e6, 20.68e6 / (246.9558352 * 287), 10e3, 101325, 600};
   SECTION("insulated") {
@@ -90,7 +90,7 @@ TEST_CASE("Farrell: diving cylinder of 11.11 L from 20.68 MPa through 1 mm, chok
   }
 }
 
-TEST_CASE("choked blowdown after one time constant", "[run][flow]") {
+TEST_CASE("run: a vessel blown down for one time constant, choked", "[run][flow]") {
   Hole h{1, 1e-4, 1, 1e6, 300, 1e3, 2e3, 1};
   h.until = h.p0 * h.V / (287 * h.T0) / (h.A * gaskettle::nozzle_flux(h.p0, h.T0, 287.0, 1.4, 0.0, 1e-5));
   SECTION("insulated") {
@@ -109,7 +109,7 @@ TEST_CASE("choked blowdown after one time constant", "[run][flow]") {
   }
 }
 
-TEST_CASE("1 m3 from 3 to 1.01 bar through 1 cm2 into 1 bar, choked then unchoked", "[run][flow]") {
+TEST_CASE("run: 1 m3 from 3 to 1.01 bar through 1 cm2 into 1 bar, choked then unchoked", "[run][flow]") {
   // Quadrature of the exact law to nine digits. At 1.01 bar the pressure difference is still a thousand times the
   // band in which the program rounds off the square root.
   Hole h{1, 1e-4, 1, 3e5, 300, 1e5, 1.01e5, 100};

@@ -37,7 +37,7 @@ run: {until: 1000 s, rtol: 1e-10, record_every: 1 s, stop_when: full}
 
 }  // namespace
 
-TEST_CASE("Balmer 6.8: an evacuated insulated vessel filled from the atmosphere ends at gamma times its temperature",
+TEST_CASE("run: Balmer 6.8: an evacuated insulated vessel filled from the atmosphere ends at gamma times its temperature",
           "[run][flow]") {
   // Evacuated: 1 mPa, of which 1e-8 of the answer remembers anything. The regularised root near equal pressures only
   // delays the end, which is taken at 0.1 % below the supply's.
@@ -46,7 +46,7 @@ TEST_CASE("Balmer 6.8: an evacuated insulated vessel filled from the atmosphere 
   CHECK(run.last("vessel.temperature") - 273.15 == Approx(137).margin(0.5));  // printed
 }
 
-TEST_CASE("an insulated vessel filled from 1 to 10 bar by gas at 300 K", "[run][flow]") {
+TEST_CASE("run: an insulated vessel filled from 1 to 10 bar by gas at 300 K", "[run][flow]") {
   const ModelRun run = fill_vessel({1e5, 300, 2e6, 300, 1e6});
   CHECK(run.last("vessel.temperature") == Approx(403.846154).epsilon(closed_form));
   CHECK(run.last("vessel.mass") - run["vessel.mass"].front() == Approx(7.46640119).epsilon(closed_form));
@@ -55,7 +55,7 @@ TEST_CASE("an insulated vessel filled from 1 to 10 bar by gas at 300 K", "[run][
   CHECK(reached(run, "full") == Approx(9e5 / (2 * 28128.7149)).epsilon(closed_form));
 }
 
-TEST_CASE("pressure rises in a straight line while the inlet is choked", "[run][flow]") {
+TEST_CASE("run: pressure rises in a straight line while the inlet is choked", "[run][flow]") {
   const auto rate = [](const ModelRun& run) {
     return (run.at("vessel.pressure", 14) - run.at("vessel.pressure", 4)) / 10;
   };
@@ -64,7 +64,7 @@ TEST_CASE("pressure rises in a straight line while the inlet is choked", "[run][
   CHECK(rate(fill_vessel({1e5, 300, 1e6, 300, 9e5, true})) == Approx(28128.7149 / 1.4).epsilon(closed_form));
 }
 
-TEST_CASE("two insulated vessels joined: 10 bar in 1 m3, 1 bar in 2 m3, both at 300 K", "[run][flow]") {
+TEST_CASE("run: two insulated vessels joined: 10 bar in 1 m3, 1 bar in 2 m3, both at 300 K", "[run][flow]") {
   // Pressure by energy; the supplying vessel's remainder stays isentropic; the receiver by mass. Equalised to 1e-9 or
   // better at the end: the regularised law closes in exponentially.
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
@@ -101,7 +101,7 @@ run: {until: 10000 s, rtol: 1e-10, record_every: 10 s, stop_when: fallen}
 
 }  // namespace
 
-TEST_CASE("ISO 6358: C 1 dm3/s/bar, b 0.35 at 7 bar", "[run][flow]") {
+TEST_CASE("run: ISO 6358: C 1 dm3/s/bar, b 0.35 at 7 bar", "[run][flow]") {
   // Isothermal: choked, p falls as exp(-t/tau), tau = V/(R T C rho0); with r = p_back/p unchoked,
   // t = tau times the integral of dr/(r sqrt(1 - ((r - b)/(1 - b))^2)), r = b + (1 - b) sin(theta).
   const double b = 0.35, tau = 1.0 / (anr_R * 293.15 * 1e-8 * 1.185);

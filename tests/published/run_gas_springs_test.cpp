@@ -41,12 +41,12 @@ double period(const ModelRun& run) { return reached(run, "again") - reached(run,
 
 }  // namespace
 
-TEST_CASE("Ruchardt's ball swings in 1.0616 s", "[run][dynamics]") {
+TEST_CASE("run: Ruchardt's ball swings in 1.0616 s", "[run][dynamics]") {
   const ModelRun run = flask(book_gas(287, 1004.5), "book_gas", flask_pressure, "10 mm/s");
   CHECK(period(run) == Approx(1.06157627).epsilon(1e-7));
 }
 
-TEST_CASE("Ruchardt's ball dropped from atmospheric pressure (Rinkel)", "[run][dynamics]") {
+TEST_CASE("run: Ruchardt's ball dropped from atmospheric pressure (Rinkel)", "[run][dynamics]") {
   // To its lowest point: (m g + p_a A) L = p_a V/(g-1) [(1 - A L/V)^(1-g) - 1], energy with p V^g constant. To first
   // order L = 2 m g V/(g p_a A^2), twice the amplitude, which the compression of 1.1 % stiffens by a few of that.
   const ModelRun run = flask(book_gas(287, 1004.5), "book_gas", 101325, "0 mm/s");
@@ -58,7 +58,7 @@ TEST_CASE("Ruchardt's ball dropped from atmospheric pressure (Rinkel)", "[run][d
   CHECK(L == Approx(2 * weight * V / (1.4 * 101325 * ball_area * ball_area)).epsilon(0.03));
 }
 
-TEST_CASE("gamma from the swing, against measured values", "[run][dynamics]") {
+TEST_CASE("run: gamma from the swing, against measured values", "[run][dynamics]") {
   const auto gamma = [](const std::string& gas) {
     const double T = period(flask("gaskettle: 1\n", gas, flask_pressure, "10 mm/s"));
     return 4 * pi * pi * 0.0165 * 0.01 / (ball_area * ball_area * flask_pressure * T * T);
@@ -101,13 +101,13 @@ run: {until: 0.2 s, rtol: 1e-12, record_every: 10 ms}
 
 }  // namespace
 
-TEST_CASE("gas spring: 35 kN/m adiabatic, 25 kN/m isothermal", "[run][dynamics]") {
+TEST_CASE("run: gas spring: 35 kN/m adiabatic, 25 kN/m isothermal", "[run][dynamics]") {
   // 0.5 mm/s: compression 3e-5, of which the period feels the square; 1e-6 for rtol 1e-12 of 20 mm in a swing of 6 um.
   CHECK(5 * std::pow(2 * pi / period(spring(5e-4, 0, false)), 2) == Approx(35000).epsilon(1e-6));
   CHECK(5 * std::pow(2 * pi / period(spring(5e-4, 0, true)), 2) == Approx(25000).epsilon(1e-6));
 }
 
-TEST_CASE("gas spring with viscous friction: 13.2816 Hz, logarithmic decrement 0.45175", "[run][dynamics]") {
+TEST_CASE("run: gas spring with viscous friction: 13.2816 Hz, logarithmic decrement 0.45175", "[run][dynamics]") {
   const ModelRun run = spring(5e-4, 60, false);
   const double up = run.at("block.position", reached(run, "top")) - 0.2,
                next = run.at("block.position", reached(run, "again")) - 0.2;
@@ -116,7 +116,7 @@ TEST_CASE("gas spring with viscous friction: 13.2816 Hz, logarithmic decrement 0
   CHECK(std::log(up / next) == Approx(0.45175372).epsilon(5e-5));
 }
 
-TEST_CASE("gas spring with heat exchange: stiffness 1.2 and loss 0.2 of the isothermal one at omega tau = 1",
+TEST_CASE("run: gas spring with heat exchange: stiffness 1.2 and loss 0.2 of the isothermal one at omega tau = 1",
           "[run][dynamics]") {
   // k*/k_iso = (1 + j g w tau)/(1 + j w tau), gamma 1.4. Driven sine of 1e-3 of the gas for six periods: the start dies
   // out as exp(-w t), the next order is a few 1e-6. h A = m cv w.
@@ -145,7 +145,7 @@ run: {until: 6 s, rtol: 1e-11, record_every: 10 ms}
   CHECK(work / (pi * X * X) / isothermal == Approx(0.2).epsilon(1e-4));
 }
 
-TEST_CASE("accumulator gas: 0.05 kg, 50 W/m2/K on 0.09 m2, cools with 8.2556 s after a stroke", "[run][dynamics]") {
+TEST_CASE("run: accumulator gas: 0.05 kg, 50 W/m2/K on 0.09 m2, cools with 8.2556 s after a stroke", "[run][dynamics]") {
   const ModelRun run = run_model(book_gas(297, 743 + 297) + R"(
 gas_spaces: {vessel: {volume: 1 l, gas: book_gas, temperature: 300 K, mass: 0.05 kg}}
 bodies: {wall: {in: vessel, mass: 1e9 kg, specific_heat: 1e6 J/kg/K, area: 0.09 m2, film: 50 W/m2/K}}

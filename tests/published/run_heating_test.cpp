@@ -68,7 +68,7 @@ double sphere_volume(double D) { return pi * D * D * D / 6; }
 
 }  // namespace
 
-TEST_CASE("Incropera 5.1: thermocouple bead of time constant 1 s comes within 1 K in 5.16 s", "[run][heat]") {
+TEST_CASE("run: Incropera 5.1: thermocouple bead of time constant 1 s comes within 1 K in 5.16 s", "[run][heat]") {
   const double D = 6 * 400.0 / (8500 * 400.0);  // 0.706 mm
   const double mass = 8500 * sphere_volume(D);
   const ModelRun run = heat({mass, 400, sphere_area(D), 400, 0, 298, 473, 473, 472, 10});
@@ -79,7 +79,7 @@ TEST_CASE("Incropera 5.1: thermocouple bead of time constant 1 s comes within 1 
   CHECK(reached(second, "there") == Approx(1).epsilon(closed_form));
 }
 
-TEST_CASE("Incropera 5.2: the bead in a duct at 400 degC reads 218.7 degC in gas at 200 degC", "[run][heat]") {
+TEST_CASE("run: Incropera 5.2: the bead in a duct at 400 degC reads 218.7 degC in gas at 200 degC", "[run][heat]") {
   const double D = 0.0007058823529;
   const Bead bead{8500 * sphere_volume(D), 400, sphere_area(D), 400, 0.9, 298, 473, 673, 490.7, 60};
   const ModelRun run = heat(bead);
@@ -89,7 +89,7 @@ TEST_CASE("Incropera 5.2: the bead in a duct at 400 degC reads 218.7 degC in gas
   CHECK(reached(run, "there") == Approx(time_by_quadrature(bead)).epsilon(closed_form));
 }
 
-TEST_CASE("Incropera 5.3: aluminium panel cured in an oven, then cooled", "[run][heat]") {
+TEST_CASE("run: Incropera 5.3: aluminium panel cured in an oven, then cooled", "[run][heat]") {
   // 3 mm thick, both faces, emissivity 0.8: to 150 degC by convection and radiation at 175 degC, 5 min more, then
   // cooled to 37 degC at 25 degC.
   Bead oven{2770 * 0.0015, 875, 1, 40, 0.8, 298, 448, 448, 423, 124};
@@ -105,24 +105,24 @@ TEST_CASE("Incropera 5.3: aluminium panel cured in an oven, then cooled", "[run]
   CHECK(total == Approx(989).epsilon(0.003));  // printed
 }
 
-TEST_CASE("Incropera 5.5: sphere of 10 mm cools in air from 400 to 335 degC in 94 s", "[run][heat]") {
+TEST_CASE("run: Incropera 5.5: sphere of 10 mm cools in air from 400 to 335 degC in 94 s", "[run][heat]") {
   const ModelRun run = heat({3000 * sphere_volume(0.01), 1000, sphere_area(0.01), 10, 0, 673, 293, 293, 608, 200});
   CHECK(reached(run, "there") == Approx(93.7993069).epsilon(closed_form));
   CHECK(reached(run, "there") == Approx(94).epsilon(0.005));  // printed
 }
 
-TEST_CASE("Cengel & Ghajar 4-1: thermocouple junction reads 99 % of a step in 10 s", "[run][heat]") {
+TEST_CASE("run: Cengel & Ghajar 4-1: thermocouple junction reads 99 % of a step in 10 s", "[run][heat]") {
   const ModelRun run = heat({8500 * sphere_volume(0.001), 320, sphere_area(0.001), 210, 0, 300, 400, 400, 399, 20});
   CHECK(reached(run, "there") == Approx(9.94131977).epsilon(closed_form));
   CHECK(reached(run, "there") == Approx(10).epsilon(0.01));  // printed
 }
 
-TEST_CASE("Cengel & Ghajar 4-2: from 700 to 50 degC in 250 s with the exponent 0.0119 1/s", "[run][heat]") {
+TEST_CASE("run: Cengel & Ghajar 4-2: from 700 to 50 degC in 250 s with the exponent 0.0119 1/s", "[run][heat]") {
   const ModelRun run = heat({1, 1000, 1, 0.0118962831 * 1000, 0, 973, 288, 288, 323, 300});
   CHECK(reached(run, "there") == Approx(250).epsilon(closed_form));
 }
 
-TEST_CASE("Cengel & Ghajar 13-12: a thermocouple among walls at 400 K reads 650 K in gas at 715 K", "[run][heat]") {
+TEST_CASE("run: Cengel & Ghajar 13-12: a thermocouple among walls at 400 K reads 650 K in gas at 715 K", "[run][heat]") {
   const ModelRun run = heat({1e-3, 500, 1e-3, 80, 0.6, 500, 715.023383, 400, 649.9, 1000});
   CHECK(run.last("bead.temperature") == Approx(650).margin(0.02));  // the book's sigma
   const double reading = fixed_step::zero(400, 715, [](double T) {
@@ -150,7 +150,7 @@ run: {until: 600 s, rtol: 1e-10, record_every: 10 s}
 
 }  // namespace
 
-TEST_CASE("two nodes, 50 and 2000 J/K, 2 W/K between and 1 W/K out, 100 W for 600 s", "[run][heat]") {
+TEST_CASE("run: two nodes, 50 and 2000 J/K, 2 W/K between and 1 W/K out, 100 W for 600 s", "[run][heat]") {
   // Closed form with two exponentials: 366.687265 and 317.619457 K. The wall's 1e-9 m2 K/W inside is no obstacle.
   SECTION("gas and wall") {
     const ModelRun run = run_model(book_gas(287, 1287) + put(two_nodes, "FILM", "2 W/m2/K") +
@@ -168,7 +168,7 @@ TEST_CASE("two nodes, 50 and 2000 J/K, 2 W/K between and 1 W/K out, 100 W for 60
   }
 }
 
-TEST_CASE("thermostat on a first-order plant: 46.5452 s on, 35.1021 s off", "[run][control]") {
+TEST_CASE("run: thermostat on a first-order plant: 46.5452 s on, 35.1021 s off", "[run][control]") {
   // 1000 J/K of gas, 2 W/K to surroundings at 20 degC, 200 W, between 75 and 79 degC.
   const ModelRun run = run_model(book_gas(287, 1287) + R"(
 surroundings: {temperature: 293.15 K}

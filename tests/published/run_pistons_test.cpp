@@ -19,7 +19,7 @@ gas_spaces: {vessel: {volume: 1e6 m3, gas: book_gas, temperature: 300 K, pressur
 )";
 }  // namespace
 
-TEST_CASE("Coulomb friction of 20 N on 5 kg and 35 kN/m from 10 mm: nine half swings, then it sticks",
+TEST_CASE("run: Coulomb friction of 20 N on 5 kg and 35 kN/m from 10 mm: nine half swings, then it sticks",
           "[run][dynamics]") {
   const double k = 35e3, F = 20, x0 = 0.01, half = pi * std::sqrt(5 / k);
   const ModelRun run = run_model(thin_gas + R"(
@@ -51,7 +51,7 @@ run: {until: 1 s, rtol: 1e-11, record_every: 0.1 s}
   CHECK(run.last("energy.friction") == Approx(F * (x0 * 18 - 2 * F / k * 81)).epsilon(closed_form));
 }
 
-TEST_CASE("dropped 0.1 m on a stop with restitution 0.8", "[run][dynamics]") {
+TEST_CASE("run: dropped 0.1 m on a stop with restitution 0.8", "[run][dynamics]") {
   // An apex is where it stops rising, and is looked for after it has come down through 1 cm.
   std::string targets = "targets:\n  low1: {when: weight.position, reaches: 1 cm, direction: falling}\n";
   for (int n = 1; n <= 4; ++n) {
@@ -86,7 +86,7 @@ run: {until: 2 s, rtol: 1e-11, record_every: 0.1 s}
   CHECK(run.last("energy.impact") == Approx(5 * g * h0).epsilon(closed_form));
 }
 
-TEST_CASE("Stribeck friction on a driven piston: 45.04 N at 50 mm/s", "[run][dynamics]") {
+TEST_CASE("run: Stribeck friction on a driven piston: 45.04 N at 50 mm/s", "[run][dynamics]") {
   // Fs 60 N, Fc 40 N, vs 20 mm/s (exponent 2), 100 N s/m.
   const ModelRun run = run_model(thin_gas + R"(
 pistons:

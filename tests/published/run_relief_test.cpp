@@ -38,7 +38,7 @@ run: {until: 1 ms, rtol: 1e-10}
 
 }  // namespace
 
-TEST_CASE("API 520-I Example 1: 3698 mm2 pass 24 270 kg/h at 670 kPa", "[run][relief]") {
+TEST_CASE("run: API 520-I Example 1: 3698 mm2 pass 24 270 kg/h at 670 kPa", "[run][relief]") {
   // M 51, k 1.11, 348 K, Kd 0.975. Z = 0.90 goes into R: the formula has only Z R.
   const Relieving v{0.9 * Ru / 0.051, 1.11, 670e3, 348, 0.00369904606, 0.975};
   CHECK(open_valve_flow(v) == Approx(24270.0 / 3600).epsilon(5e-5));  // the standard's C = 0.03948 psi has four digits
@@ -47,27 +47,27 @@ TEST_CASE("API 520-I Example 1: 3698 mm2 pass 24 270 kg/h at 670 kPa", "[run][re
   CHECK(open_valve_flow(printed) == Approx(24270.0 / 3600).epsilon(0.0005));
 }
 
-TEST_CASE("API 520-I, the same with 532 kPa behind: subcritical", "[run][relief]") {
+TEST_CASE("run: API 520-I, the same with 532 kPa behind: subcritical", "[run][relief]") {
   Relieving v{0.9 * Ru / 0.051, 1.11, 670e3, 348, 0.00424835878, 0.975, 532e3};
   CHECK(open_valve_flow(v) == Approx(24270.0 / 3600).epsilon(0.001));  // the standard's 17.9 is 17.910
   v.area = 4226e-6;  // printed, with F2 = 0.8548 rounded to 0.86: 0.5 % too small
   CHECK(open_valve_flow(v) == Approx(24270.0 / 3600).epsilon(0.006));
 }
 
-TEST_CASE("ISO 4126: capacity with 80 % back pressure is 0.8188 of the critical one, k = 1.4", "[run][relief]") {
+TEST_CASE("run: ISO 4126: capacity with 80 % back pressure is 0.8188 of the critical one, k = 1.4", "[run][relief]") {
   const double critical = open_valve_flow({296.8, 1.4, 2e6, 300, 1e-4, 0.9});
   CHECK(open_valve_flow({296.8, 1.4, 2e6, 300, 1e-4, 0.9, 1.6e6}) / critical ==
         Approx(0.818804239).epsilon(closed_form));
 }
 
-TEST_CASE("ethane as an ideal gas at 200 bar, 400 K: 38 357 kg/m2/s", "[run][relief]") {
+TEST_CASE("run: ethane as an ideal gas at 200 bar, 400 K: 38 357 kg/m2/s", "[run][relief]") {
   // The note prints 38 359, and 8.314 for the gas constant.
   const double flow = open_valve_flow({Ru / 0.030069, 1.146, 20e6, 400, 1e-3, 1});
   CHECK(flow / 1e-3 == Approx(38357.2719).epsilon(closed_form));
   CHECK(flow / 1e-3 == Approx(38359).epsilon(1e-4));
 }
 
-TEST_CASE("valve set at 7 bar gauge: full lift 10 % above it passes the sizing formula's flow", "[run][relief]") {
+TEST_CASE("run: valve set at 7 bar gauge: full lift 10 % above it passes the sizing formula's flow", "[run][relief]") {
   // 100 mm2, Kd 0.975, nitrogen (M 28.0134, k 1.4) at 300 K: 0.194944175 kg/s at 871 325 Pa. Fed with a little more,
   // the vessel passes through that state.
   const double R = Ru / 0.0280134;
@@ -86,7 +86,7 @@ run: {until: 60 s, rtol: 1e-10, record_every: 1 s}
   CHECK(lifts == Approx((801325 - 750000) / (R * 300 * 0.2)).epsilon(closed_form));
 }
 
-TEST_CASE("pop valve set at 7 bar gauge with 7 % blowdown reseats at 752 325 Pa", "[run][relief]") {
+TEST_CASE("run: pop valve set at 7 bar gauge with 7 % blowdown reseats at 752 325 Pa", "[run][relief]") {
   // Isothermal, choked: from set to reseat in V/(K A psi sqrt(R T)) ln(p_set/p_reseat).
   const double R = Ru / 0.0280134;
   const ModelRun run = run_model(book_gas(R, 3.5 * R) + R"(

@@ -10,7 +10,7 @@
 using namespace gaskettle::testing;
 using namespace model_text;
 
-TEST_CASE("Cengel & Boles 2-7: 200 N m at 4000 rpm", "[run][stirring]") {
+TEST_CASE("run: Cengel & Boles 2-7: 200 N m at 4000 rpm", "[run][stirring]") {
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
 gas_spaces: {vessel: {volume: 10 m3, gas: book_gas, temperature: 300 K, pressure: 10 bar abs}}
 stirrers: {shaft: {in: vessel, torque: 200 N m, speed: 4000 rpm}}
@@ -36,7 +36,7 @@ run: {until: 1 ms}
 }
 }  // namespace
 
-TEST_CASE("power numbers: turbines in something as dense as water, and in nitrogen at 10 bar", "[run][stirring]") {
+TEST_CASE("run: power numbers: turbines in something as dense as water, and in nitrogen at 10 bar", "[run][stirring]") {
   CHECK(impeller(6, 1000, "120 rpm", 1.333) == Approx(202018.892).epsilon(1e-8));  // Harriott 7.6b
   CHECK(impeller(6, 1000, "120 rpm", 1.333) + 2 * impeller(1.7, 1000, "120 rpm", 1.333) ==
         Approx(316496.264).epsilon(1e-8));
@@ -46,7 +46,7 @@ TEST_CASE("power numbers: turbines in something as dense as water, and in nitrog
         Approx(4).epsilon(1e-9));  // fan laws: 8 times for the speed, half for the density
 }
 
-TEST_CASE("10 W into 0.2 kg with cv 743: 0.0673 K/s", "[run][stirring]") {
+TEST_CASE("run: 10 W into 0.2 kg with cv 743: 0.0673 K/s", "[run][stirring]") {
   const ModelRun run = run_model(book_gas(297, 743 + 297) + R"(
 gas_spaces: {vessel: {volume: 0.1 m3, gas: book_gas, temperature: 300 K, mass: 0.2 kg}}
 stirrers: {paddle: {in: vessel, power: 10 W}}
@@ -86,7 +86,7 @@ void check_both_routes(const ModelRun& run) {
 
 }  // namespace
 
-TEST_CASE("stroke of a loaded, insulated piston lifted by a stirrer", "[run][stirring][stroke]") {
+TEST_CASE("run: stroke of a loaded, insulated piston lifted by a stirrer", "[run][stirring][stroke]") {
   SECTION("constant cp: t = m cp dT/P") {
     const ModelRun run = stroke(book_gas(208.13, 520.3), "book_gas");
     const double m = run.last("cylinder.mass");

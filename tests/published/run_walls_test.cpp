@@ -19,7 +19,7 @@ constexpr double sigma_excess = 5.670374419 / 5.67;
 const std::string no_obstacle = "{density: 8000 kg/m3, specific_heat: 400 J/kg/K, conductivity: 1e5 W/m/K}";
 }  // namespace
 
-TEST_CASE("Incropera 5.4: 40 mm steel wall, insulated outside, hot oil inside for 8 min", "[run][wall]") {
+TEST_CASE("run: Incropera 5.4: 40 mm steel wall, insulated outside, hot oil inside for 8 min", "[run][wall]") {
   // 1 m of a 1 m pipe as a plane wall. alpha is 1.88e-5 in the book's rounding; density is taken to give it.
   // The wall's nodes draw heat within 1e-3 of the exact plane-wall series; the energy and the flux follow.
   const ModelRun run = run_model(book_gas(287, 1004.5) + fill(R"(
@@ -44,7 +44,7 @@ run: {until: 480 s, rtol: 1e-8, record_every: 10 s}
   CHECK(run.last("pipe.outer_temperature") - 273 == Approx(42.9).margin(0.15));
 }
 
-TEST_CASE("Incropera 3.2: a chip of 10 kW/m2 between air and a board with a contact resistance", "[run][wall]") {
+TEST_CASE("run: Incropera 3.2: a chip of 10 kW/m2 between air and a board with a contact resistance", "[run][wall]") {
   // Air film 100 W/m2/K on the chip; behind it 0.9e-4 m2 K/W, 8 mm of aluminium (239 W/m/K), and the same film.
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
 surroundings: {temperature: 298 K}
@@ -66,7 +66,7 @@ run: {until: 10000 s, record_every: 100 s}
   CHECK(run.last("board.temperature") - 273 == Approx(75.3).margin(0.05));  // printed
 }
 
-TEST_CASE("pipe insulation: 2 pi k L dT/ln(r2/r1)", "[run][wall]") {
+TEST_CASE("run: pipe insulation: 2 pi k L dT/ln(r2/r1)", "[run][wall]") {
   // r 0.1 to 0.15 m, 0.04 W/m/K, 1 m, 100 K. Films of 1e9 W/m2/K add 1e-8 of the resistance.
   const ModelRun run = run_model(book_gas(287, 1004.5) +
                                  fill(R"(
@@ -113,7 +113,7 @@ run: {until: 1000 s, record_every: 100 s}
 
 }  // namespace
 
-TEST_CASE("grey radiation between a body and the wall around it, steady", "[run][radiation]") {
+TEST_CASE("run: grey radiation between a body and the wall around it, steady", "[run][radiation]") {
   // Cengel & Ghajar 13-7, plates at 800 and 500 K, 0.2 and 0.7: 3625 W/m2.
   CHECK(radiated(1, 0.2, 800, 1, 0.7, 500) == Approx(3625.36816 * sigma_excess).epsilon(1e-6));
   CHECK(radiated(1, 0.2, 800, 1, 0.7, 500) == Approx(3625).epsilon(0.001));
@@ -124,7 +124,7 @@ TEST_CASE("grey radiation between a body and the wall around it, steady", "[run]
   CHECK(radiated(1, 0.8, 500, 1.5, 0.3, 350) == Approx(959.907369).epsilon(1e-6));
 }
 
-TEST_CASE("an element that radiates to the wall around it, steady", "[run][radiation]") {
+TEST_CASE("run: an element that radiates to the wall around it, steady", "[run][radiation]") {
   // As above with the plates, turned round: 3625.6 W make the element 800 K where the wall is held at 500 K. The path
   // to the gas must exist; at 1e-9 W/K it carries nothing.
   const ModelRun run = run_model(book_gas(287, 1004.5) + put(fill(R"(
@@ -145,7 +145,7 @@ run: {until: 2000 s, record_every: 100 s}
   CHECK(run.last("plate.temperature") == Approx(800).epsilon(1e-7));
 }
 
-TEST_CASE("fire of 800 degC on a cold wall: 79.33 kW/m2", "[run][fire]") {
+TEST_CASE("run: fire of 800 degC on a cold wall: 79.33 kW/m2", "[run][fire]") {
   // Emissivity 0.8, film 25 W/m2/K, wall at 20 degC, at the first instant.
   const ModelRun run = run_model(book_gas(287, 1004.5) + R"(
 gas_spaces: {vessel: {volume: 1 m3, gas: book_gas, temperature: 293.15 K, pressure: 1 bar abs}}
@@ -191,7 +191,7 @@ run: {until: 1 s}
 
 }  // namespace
 
-TEST_CASE("outer films with the program's own air", "[run][films]") {
+TEST_CASE("run: outer films with the program's own air", "[run][films]") {
   // A pipe of 1 km, so that its ends weigh nothing. The books' air at film temperature is rounded to three digits and
   // differs from book to book; Nu goes with the cube root of Ra: 1 %.
   // Incropera 9.4: 0.1 m, 165 degC in still air at 23 degC, emissivity 0.85: 763 W/m, of which 7.23 W/m2/K are film.

@@ -32,7 +32,7 @@ ports:
 relief_devices:
   valve: {protects: chamber, set: 3 bar gauge, reseat: 2.6 bar gauge, flow_area: 60 mm2, discharge_coefficient: 0.8, action: pop}
 sensors: {probe: {reads: chamber.temperature, time_constant: 4 s}}
-controllers: {heat: {drives: element.power, holds: probe, at: 50 degC, by: {on_off: {dead_band: 2 K}}}}
+controllers: {heat: {drives: element.power, holds: probe, at: 42 degC, by: {on_off: {dead_band: 2 K}}}}
 targets:
   warm: {when: chamber.temperature, reaches: 40 degC}
   far: {when: chamber.temperature, reaches: 400 degC}

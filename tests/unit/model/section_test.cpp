@@ -26,7 +26,13 @@ Node map(std::vector<std::pair<std::string, Node>> entries) {
   Node n;
   n.kind = Node::Kind::map;
   int line = 1;
-  for (auto& [key, value] : entries) n.entries.push_back({key, {model_file(), line++, 3}, value});
+  for (auto& [key, value] : entries) {
+    Node::Entry entry;
+    entry.key = key;
+    entry.key_place = {model_file(), line++, 3};
+    entry.value = std::move(value);
+    n.entries.push_back(std::move(entry));
+  }
   return n;
 }
 
