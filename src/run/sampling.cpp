@@ -86,7 +86,9 @@ ExtremeTracker::ExtremeTracker(Plant& plant) : plant_(plant) {
 void ExtremeTracker::take(double t, const Workspace<double>& w) {
   for (Limit& l : plant_.watch().limits()) {
     const double x = plant_.watch().limit_value(l, w);
-    const bool worse = l.below ? x > l.extreme : x < l.extreme;
+    // A constant quantity has no later extreme: rounding is not worth a new time.
+    const double rounding = 1e-12 * std::abs(l.extreme);
+    const bool worse = l.below ? x > l.extreme + rounding : x < l.extreme - rounding;
     if (!worse && l.extreme == l.extreme) continue;
     l.extreme = x;
     l.extreme_time = t;
@@ -138,7 +140,8 @@ void ExtremeTracker::refine(const DenseStep& step, double low, double high, std:
   };
   std::uintmax_t most = 30;
   const auto [t, x] = boost::math::tools::brent_find_minima(f, low, high, 26, most);
-  if (l.below ? sign * x > l.extreme : sign * x < l.extreme) {
+  const double rounding = 1e-12 * std::abs(l.extreme);
+  if (l.below ? sign * x > l.extreme + rounding : sign * x < l.extreme - rounding) {
     l.extreme = sign * x;
     l.extreme_time = t;
   }
