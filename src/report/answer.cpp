@@ -182,6 +182,7 @@ std::string answer_text(const Plant& plant, const CaseResult& r, const AnswerCon
   out += reliefs_block(r, p);
   out += "\nGas models\n" + gas_model_line(plant);
   for (const std::string& w : r.warnings) out += wrapped("warning: " + w, 100, "  ");
+  for (const std::string& a : context.advice) out += wrapped("note: " + a, 100, "  ");
   out += events_block(r, p);
   out += energy_block(r, p);
   out += loss_block(plant, r, p);

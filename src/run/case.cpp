@@ -130,6 +130,12 @@ CaseResult run_case(Plant& plant, const CaseOptions& options) {
   settings.method = plant.model().run.method;
   CaseResult result;
   result.ending = integrate(plant, observer, settings, y);
+  // Held at its stability limit, an explicit method's errors hide below the tolerance of each step.
+  constexpr long stiff_steps = 5000;
+  if (settings.method == Method::explicit_ && result.ending.stats.steps > stiff_steps)
+    plant.layout().warnings.emplace_back(
+        "the explicit method took " + std::to_string(result.ending.stats.steps) +
+        " steps: the plant is stiff, and the answer may be off by percents; use method: auto or stiff");
   observer.finish(result.ending.time, y.data());
   result.books = close_books(plant, result.ending.time, y.data());
   result.targets = plant.watch().targets();
