@@ -25,7 +25,7 @@ std::string shown(const Node& node) {
 /// What is wrong with the size of a value, or empty.
 std::string range_fault(double si, Range range, const UnitKind& kind) {
   const bool pressure = kind.flavour == UnitFlavour::pressure;
-  if (pressure && si < 0.0) return "an absolute pressure cannot be below zero";
+  if (pressure && si < 0.0) return "lies below vacuum; an absolute pressure cannot be below zero";
   switch (range) {
     case Range::positive:
       if (!(si > 0.0)) return "must be greater than zero";

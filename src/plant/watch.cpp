@@ -215,7 +215,7 @@ void Watch::guards(const Workspace<double>& w, double* g) const {
     }
     *g++ = value;
   }
-  for (const Limit& l : limits_) *g++ = (l.below ? 1.0 : -1.0) * (limit_value(l, w) - l.bound);
+  for (const Limit& l : limits_) *g++ = (l.below ? 1.0 : -1.0) * (limit_value(l, w) - l.bound) - l.slack();
 }
 
 void Watch::reach(Target& t, double time, Event& e) {

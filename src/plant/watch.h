@@ -43,8 +43,14 @@ struct Limit {
   double extreme = std::numeric_limits<double>::quiet_NaN(), extreme_time = 0.0;
   double crossed = std::numeric_limits<double>::quiet_NaN();  ///< first crossing, s
 
-  bool broken() const { return below ? extreme > bound : extreme < bound; }
-  double margin() const { return below ? bound - extreme : extreme - bound; }
+  /// What rounding and integration may add to a quantity that stands at its bound: equality keeps a limit.
+  double slack() const { return 1e-11 * (bound < 0.0 ? -bound : bound); }
+  bool broken() const { return margin() < 0.0; }
+  /// Positive while kept; 0 at the bound.
+  double margin() const {
+    const double room = below ? bound - extreme : extreme - bound;
+    return room > slack() || room < -slack() ? room : 0.0;
+  }
 };
 
 class Watch {

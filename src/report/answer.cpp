@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <map>
 
 #include "plant/cautions.h"
 #include "report/presenter.h"
@@ -30,7 +31,10 @@ std::string targets_block(const Plant& plant, const CaseResult& r, const Present
         t.settles ? fmt::format("{} within {} of {} for {}", c.name, p.show_difference(t.band, c.kind, ""),
                                 p.show(t.level, c.kind, t.unit), p.show(t.duration, unit_kinds::time, t.duration_unit))
                   : fmt::format("{} reaches {}", c.name, p.show(t.level, c.kind, t.unit));
-    rows.push_back({t.name, what, t.reached() ? "at " + p.time(t.time) : "NOT REACHED"});
+    const std::string when = t.settles
+                                 ? fmt::format("from {} (certain at {})", p.time(t.time), p.time(t.time + t.duration))
+                                 : "at " + p.time(t.time);
+    rows.push_back({t.name, what, t.reached() ? when : "NOT REACHED"});
   }
   return "\nTargets\n" + table(rows);
 }
@@ -55,32 +59,60 @@ std::string limits_block(const CaseResult& r, const Presenter& p) {
 std::string reliefs_block(const CaseResult& r, const Presenter& p) {
   if (r.reliefs.empty()) return "";
   const UnitKind flow{"mass flow", "kg s-1"};
-  std::vector<std::vector<std::string>> rows = {{"device", "lifts", "greatest lift", "peak inlet pressure",
+  std::vector<std::vector<std::string>> rows = {{"device", "lifts", "first at", "greatest lift", "peak inlet pressure",
                                                  "against set", "capacity there", "needed", "released"}};
   for (const ReliefOutcome& o : r.reliefs)
-    rows.push_back({o.name, o.disc ? (o.lifts > 0 ? "burst" : "whole") : std::to_string(o.lifts),
+    rows.push_back({o.name, o.disc ? (o.lifts > 0 ? "burst" : "whole") : std::to_string(o.lifts), p.time(o.first_lift),
                     fmt::format("{:.0f} %", 100.0 * o.greatest_opening),
                     p.show(o.peak_pressure, unit_kinds::pressure, "bar gauge"),
                     o.accumulation < 0.0 ? fmt::format("{:.2f} % below", -100.0 * o.accumulation)
                                          : fmt::format("+{:.2f} %", 100.0 * o.accumulation),
                     p.scaled(o.capacity, flow), o.needed > 0.0 ? p.scaled(o.needed, flow) : "-",
                     o.released > 0.0 ? p.scaled(o.released, unit_kinds::mass) : "none"});
-  return "\nRelief devices\n" + table(rows);
+  return "\nRelief devices\n" + table(rows) +
+         "  capacity: fully open at the peak; needed: the flow that would have held the pressure, at its greatest\n"
+         "  while at or above set\n";
+}
+
+std::string ranges_block(const CaseResult& r, const Presenter& p) {
+  if (r.ranges.empty()) return "";
+  std::vector<std::vector<std::string>> rows = {{"", "lowest", "at", "highest", "at", "at the end"}};
+  for (const ChannelRange& c : r.ranges)
+    rows.push_back({c.channel, p.brief(c.lowest, c.kind, c.unit), p.time(c.lowest_time),
+                    p.brief(c.highest, c.kind, c.unit), p.time(c.highest_time), p.brief(c.end, c.kind, c.unit)});
+  return "\nHow far it went\n" + table(rows);
+}
+
+/// What a long list leaves out first: the same part doing the same thing again and again.
+std::vector<const LoggedEvent*> events_worth_showing(const CaseResult& r, std::string& folded) {
+  std::map<std::pair<std::string, std::string>, std::size_t> count, seen;
+  for (const LoggedEvent& e : r.events) ++count[{e.part, e.what}];
+  std::vector<const LoggedEvent*> shown;
+  for (const LoggedEvent& e : r.events) {
+    const std::pair<std::string, std::string> key{e.part, e.what};
+    const std::size_t n = count[key], i = ++seen[key];
+    if (r.events.size() <= most_events_shown || n <= 2 || i == 1 || i == n) shown.push_back(&e);
+  }
+  for (const auto& [key, n] : count)
+    if (r.events.size() > most_events_shown && n > 2)
+      folded += fmt::format("  {} {} {} times: the first and the last are shown\n", key.first, key.second, n);
+  return shown;
 }
 
 std::string events_block(const CaseResult& r, const Presenter& p) {
   if (r.events.empty()) return "\nEvents: none\n";
+  std::string folded;
+  const std::vector<const LoggedEvent*> events = events_worth_showing(r, folded);
   std::vector<std::vector<std::string>> rows;
-  const std::size_t n = r.events.size();
+  const std::size_t n = events.size();
   for (std::size_t i = 0; i < n; ++i) {
-    if (n > most_events_shown && i == most_events_shown / 2) {
-      rows.push_back({"...", fmt::format("{} more in the record", n - most_events_shown), ""});
-      i = n - most_events_shown / 2;
+    if (n > 2 * most_events_shown && i == most_events_shown) {
+      rows.push_back({"...", fmt::format("{} more in the record", n - 2 * most_events_shown), ""});
+      i = n - most_events_shown;
     }
-    const LoggedEvent& e = r.events[i];
-    rows.push_back({p.time(e.time), e.part, e.what});
+    rows.push_back({p.time(events[i]->time), events[i]->part, events[i]->what});
   }
-  return fmt::format("\nEvents ({})\n", n) + table(rows, {0});
+  return fmt::format("\nEvents ({})\n", r.events.size()) + table(rows, {0}) + folded;
 }
 
 std::string energy_block(const CaseResult& r, const Presenter& p) {
@@ -133,6 +165,17 @@ std::string bookkeeping_block(const CaseResult& r) {
 }
 }  // namespace
 
+/// What relief devices did, in a sentence each; empty where none opened.
+std::string relief_sentence(const CaseResult& r, const Presenter& p) {
+  std::string out;
+  for (const ReliefOutcome& o : r.reliefs)
+    if (o.lifts > 0)
+      out += fmt::format("Relief device '{}' {} first at {} and released {}. ", o.name,
+                         o.disc ? "burst" : (o.lifts == 1 ? "lifted once," : fmt::format("lifted {} times,", o.lifts)),
+                         p.time(o.first_lift), p.scaled(o.released, unit_kinds::mass));
+  return out;
+}
+
 std::string gas_model_line(const Plant& plant) {
   std::string out;
   for (const SpaceInfo& s : plant.layout().spaces) {
@@ -155,8 +198,10 @@ std::string verdict(const Plant& plant, const CaseResult& r) {
   if (!r.books_closed()) out += "The books did NOT CLOSE: do not use this result. ";
   for (const Target& t : r.targets)
     if (!t.reached()) out += fmt::format("Target '{}' NOT REACHED. ", t.name);
+  const std::string relief = relief_sentence(r, p);
   if (!out.empty()) {
-    out.pop_back();
+    out += relief;
+    if (out.back() == ' ') out.pop_back();
     return out;
   }
   std::string limits =
@@ -168,8 +213,10 @@ std::string verdict(const Plant& plant, const CaseResult& r) {
                             : (r.targets.size() == 1 ? "; the target was reached"
                                                      : fmt::format("; all {} targets were reached", r.targets.size()));
   if (r.targets.size() == 1) targets += " at " + p.time(r.targets[0].time);
-  return fmt::format("{}{}. Ended at {}{}.", limits, targets, p.time(r.ending.time),
-                     r.ending.reason == EndReason::stop_condition ? " (" + r.ending.message + ")" : "");
+  std::string sentence = fmt::format("{}{}. Ended at {}{}.", limits, targets, p.time(r.ending.time),
+                                     r.ending.reason == EndReason::stop_condition ? " (" + r.ending.message + ")" : "");
+  if (!relief.empty()) sentence += " " + relief.substr(0, relief.size() - 1);
+  return sentence;
 }
 
 std::string answer_text(const Plant& plant, const CaseResult& r, const AnswerContext& context) {
@@ -180,6 +227,7 @@ std::string answer_text(const Plant& plant, const CaseResult& r, const AnswerCon
   out += targets_block(plant, r, p);
   out += limits_block(r, p);
   out += reliefs_block(r, p);
+  out += ranges_block(r, p);
   out += "\nGas models\n" + gas_model_line(plant);
   for (const std::string& w : r.warnings) out += wrapped("warning: " + w, 100, "  ");
   for (const std::string& a : context.advice) out += wrapped("note: " + a, 100, "  ");

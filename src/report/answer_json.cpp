@@ -44,6 +44,7 @@ Json reliefs_json(const CaseResult& r) {
     list.push_back({{"name", o.name},
                     {"disc", o.disc},
                     {"lifts", o.lifts},
+                    {"first_lift", number(o.first_lift)},
                     {"greatest_opening", o.greatest_opening},
                     {"set_pressure", o.set_pressure},
                     {"peak_pressure", o.peak_pressure},
@@ -130,6 +131,18 @@ std::string answer_json(const Plant& plant, const CaseResult& r, const AnswerCon
                       {"factorisations", s.factorisations},
                       {"events", s.events},
                       {"seconds", r.wall_seconds}};
+  Json ranges = Json::array(), departures = Json::array();
+  for (const ChannelRange& c : r.ranges)
+    ranges.push_back({{"channel", c.channel},
+                      {"lowest", c.lowest},
+                      {"lowest_time", c.lowest_time},
+                      {"highest", c.highest},
+                      {"highest_time", c.highest_time},
+                      {"end", c.end}});
+  for (const IdealGasUse& g : r.ideal_gas)
+    departures.push_back({{"gas_space", g.space}, {"departure_from_ideal", g.departure}, {"time", g.time}});
+  answer["ranges"] = ranges;
+  answer["ideal_gas"] = departures;
   answer["record"] = r.record_path;
   return answer.dump(2) + "\n";
 }

@@ -8,6 +8,7 @@
 
 #include "gas/catalogue.h"
 #include "plant/cautions.h"
+#include "plant/ideal_departure.h"
 #include "report/presenter.h"
 
 namespace gaskettle {
@@ -30,24 +31,6 @@ double stored_energy(const Layout& layout, const SpaceInfo& space) {
     (then.entropy < now.entropy ? low : high) = middle;
   }
   return total * (now.energy - mixture.from_temperature(space.mass.data(), low, layout.atmosphere_pressure).energy);
-}
-
-/// |Z - 1| of the start state from the second virial coefficient, as a first warning:
-/// M. M. Abbott in J. M. Smith and H. C. Van Ness, Introduction to Chemical Engineering
-/// Thermodynamics, 3rd ed. 1975, p. 87; mole-fraction means of Tc, pc and acentric factor.
-double departure_from_ideal(const Layout& layout, const SpaceInfo& space) {
-  double tc = 0.0, pc = 0.0, acentric = 0.0;
-  for (const auto& [name, x] : space.composition) {
-    const auto species = find_gas(name);
-    if (!species || !species->critical) return 0.0;
-    tc += x * species->critical->temperature;
-    pc += x * species->critical->pressure;
-    acentric += x * species->critical->acentric_factor;
-  }
-  const double tr = space.temperature / tc, pr = *space.pressure / pc;
-  const double b0 = 0.083 - 0.422 / std::pow(tr, 1.6), b1 = 0.139 - 0.172 / std::pow(tr, 4.2);
-  (void)layout;
-  return std::abs((b0 + acentric * b1) * pr / tr);
 }
 
 struct TimeConstant {
@@ -101,11 +84,8 @@ std::vector<std::string> advice(const Plant& plant) {
     const bool faced =
         std::any_of(layout.faces.begin(), layout.faces.end(), [&](const FaceInfo& f) { return f.space == s.index; });
     if (!faced) list.push_back(fmt::format("{}: no wall: it is taken as perfectly insulated", s.name));
-    if (const double d = departure_from_ideal(layout, s); d > 0.02)
-      list.push_back(
-          fmt::format("{}: at the start |Z - 1| is about {:.1f} % (second virial coefficient): the ideal gas is off by "
-                      "about that much",
-                      s.name, 100.0 * d));
+    if (const double d = IdealDeparture(s.composition).at(s.temperature, *s.pressure); d > departure_worth_saying)
+      list.push_back(fmt::format("{}: at the start {}", s.name, departure_text(d)));
   }
   const auto on_pressure = [](const Limit& l) { return l.kind.flavour == UnitFlavour::pressure; };
   if (std::none_of(plant.watch().limits().begin(), plant.watch().limits().end(), on_pressure))

@@ -47,7 +47,7 @@ constexpr Scale scales[] = {{"J", 1e9, 1e9, "GJ"},
 }  // namespace
 
 std::string Presenter::scaled(double si, const UnitKind& kind) const {
-  if (kind.flavour == UnitFlavour::temperature) return fmt::format("{:.2f} degC", si - 273.15);
+  if (kind.flavour == UnitFlavour::temperature) return format_quantity(si, kind, "degC", 4);
   if (kind.flavour == UnitFlavour::pressure)
     return fmt::format("{:.4g} bar abs ({:.4g} bar gauge)", si / 1e5, (si - atmosphere_) / 1e5);
   if (kind.flavour == UnitFlavour::pressure_difference) return fmt::format("{:.4g} bar", si / 1e5);
@@ -64,6 +64,12 @@ std::string Presenter::show(double si, const UnitKind& kind, const std::string& 
   const std::string bar = fmt::format("{:.4g} bar", (is_gauge(unit) ? si : si - atmosphere_) / 1e5);
   if (is_gauge(unit)) return format_quantity(si - atmosphere_, kind, unit, significant) + " (" + bar + " abs)";
   return format_quantity(si, kind, unit, significant) + " (" + bar + " gauge)";
+}
+
+std::string Presenter::brief(double si, const UnitKind& kind, const std::string& unit) const {
+  if (kind.flavour != UnitFlavour::pressure) return show(si, kind, unit);
+  if (unit.empty()) return fmt::format("{:.4g} bar gauge", (si - atmosphere_) / 1e5);
+  return format_quantity(is_gauge(unit) ? si - atmosphere_ : si, kind, unit, 4);
 }
 
 std::string Presenter::show_difference(double si, const UnitKind& kind, const std::string& unit) const {

@@ -13,6 +13,8 @@ public:
   Presenter(double atmosphere, std::string time_unit) : atmosphere_(atmosphere), time_unit_(std::move(time_unit)) {}
   /// "181.3 degC"; pressures with gauge beside absolute.
   std::string show(double si, const UnitKind& kind, const std::string& unit, int significant = 4) const;
+  /// As `show`, a pressure in its own spelling alone: for tables that have no room.
+  std::string brief(double si, const UnitKind& kind, const std::string& unit) const;
   /// A difference, such as a margin, in the unit of the value it belongs to.
   std::string show_difference(double si, const UnitKind& kind, const std::string& unit) const;
   /// A time in the unit of the run's length.

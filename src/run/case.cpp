@@ -49,7 +49,7 @@ public:
     rows_.finish(t, y);
     extremes_.finish(t, y);
   }
-  const std::vector<ReliefOutcome>& reliefs() const { return extremes_.reliefs(); }
+  const ExtremeTracker& extremes() const { return extremes_; }
 
 private:
   /// Tells the user and saves what there is, now and then.
@@ -140,9 +140,13 @@ CaseResult run_case(Plant& plant, const CaseOptions& options) {
   result.books = close_books(plant, result.ending.time, y.data());
   result.targets = plant.watch().targets();
   result.limits = plant.watch().limits();
-  result.reliefs = observer.reliefs();
+  result.reliefs = observer.extremes().reliefs();
+  result.ranges = observer.extremes().ranges();
+  result.ideal_gas = observer.extremes().ideal_gas();
   result.events = plant.events();
   result.warnings = plant.layout().warnings;
+  for (const IdealGasUse& g : result.ideal_gas)
+    if (g.departure > departure_worth_saying) result.warnings.push_back(g.space + ": " + departure_text(g.departure));
   const Workspace<double>& w = plant.observe(result.ending.time, y.data());
   for (std::size_t c = 0; c < w.out.size(); ++c)
     result.end_values.emplace_back(plant.layout().channels[c].name, w.out[c]);

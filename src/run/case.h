@@ -2,6 +2,7 @@
 #pragma once
 #include <atomic>
 #include <functional>
+#include <limits>
 #include <string>
 #include <vector>
 
@@ -26,6 +27,7 @@ struct ReliefOutcome {
   std::string name;
   bool disc = false;
   long lifts = 0;
+  double first_lift = std::numeric_limits<double>::quiet_NaN();  ///< s
   double greatest_opening = 0.0;
   double peak_pressure = 0.0;  ///< Pa absolute, the highest at its inlet
   double accumulation = 0.0;   ///< (peak gauge - set gauge) / set gauge
@@ -35,12 +37,28 @@ struct ReliefOutcome {
   double released = 0.0;       ///< kg
 };
 
+/// How far a temperature, pressure or position went.
+struct ChannelRange {
+  std::string channel;
+  UnitKind kind;
+  std::string unit;                                                                      ///< as the model writes it
+  double lowest = 0.0, lowest_time = 0.0, highest = 0.0, highest_time = 0.0, end = 0.0;  ///< SI, s
+};
+
+/// Where a gas was farthest from an ideal one.
+struct IdealGasUse {
+  std::string space;
+  double departure = 0.0, time = 0.0;  ///< |Z - 1|, s
+};
+
 struct CaseResult {
   Ending ending;
   Books books;
   std::vector<Target> targets;
   std::vector<Limit> limits;
   std::vector<ReliefOutcome> reliefs;
+  std::vector<ChannelRange> ranges;
+  std::vector<IdealGasUse> ideal_gas;
   std::vector<LoggedEvent> events;
   std::vector<std::string> warnings;
   std::vector<std::pair<std::string, double>> end_values;  ///< channel, SI

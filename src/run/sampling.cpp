@@ -11,7 +11,8 @@ namespace gaskettle {
 
 namespace {
 constexpr int samples_per_piece = 6;
-}
+constexpr double infinity = std::numeric_limits<double>::infinity();
+}  // namespace
 
 RowSampler::RowSampler(Plant& plant, RecordWriter* writer, double every)
     : plant_(plant), writer_(writer), every_(every) {
@@ -56,7 +57,7 @@ void RowSampler::piece(const DenseStep& step, double from, double to) {
 void RowSampler::before_event(double t, const double* y) {
   if (pending_ && pending_time_ == t) return;  // a further event at one instant: the row before is written
   flush_pending();
-  const double just_before = std::nextafter(t, -std::numeric_limits<double>::infinity());
+  const double just_before = std::nextafter(t, -infinity);
   if (just_before > 0.0) row(just_before, y);
 }
 
@@ -81,9 +82,46 @@ ExtremeTracker::ExtremeTracker(Plant& plant) : plant_(plant) {
     r.set_pressure = info.set_pressure;
     reliefs_.push_back(r);
   }
+  const std::vector<ChannelDoc>& channels = plant.layout().channels;
+  for (std::size_t c = 0; c < channels.size(); ++c) {
+    const UnitKind& kind = channels[c].kind;
+    const bool told =
+        kind.flavour == UnitFlavour::temperature || kind.flavour == UnitFlavour::pressure || kind.si == "m";
+    if (!told || channels[c].name.find(".setpoint") != std::string::npos) continue;
+    ranged_channels_.push_back(static_cast<int>(c));
+    ranges_.push_back({channels[c].name, kind, channels[c].unit, infinity, 0.0, -infinity, 0.0, 0.0});
+  }
+  for (const SpaceInfo& s : plant.layout().spaces) {
+    ideal_gas_.push_back({s.name, 0.0, 0.0});
+    departure_.emplace_back(s.composition);
+  }
+}
+
+/// Lowest, highest and latest of what people ask for first; how far each gas is from ideal.
+void ExtremeTracker::take_ranges(double t, const Workspace<double>& w) {
+  for (std::size_t i = 0; i < ranges_.size(); ++i) {
+    ChannelRange& r = ranges_[i];
+    const double x = w.out[ranged_channels_[i]], rounding = 1e-12 * std::abs(x);
+    if (x < r.lowest - rounding) {
+      r.lowest = x;
+      r.lowest_time = t;
+    }
+    if (x > r.highest + rounding) {
+      r.highest = x;
+      r.highest_time = t;
+    }
+    r.end = x;
+  }
+  for (std::size_t s = 0; s < departure_.size(); ++s) {
+    const double d = departure_[s].at(w.gas[s].temperature, w.gas[s].pressure);
+    if (d <= ideal_gas_[s].departure) continue;
+    ideal_gas_[s].departure = d;
+    ideal_gas_[s].time = t;
+  }
 }
 
 void ExtremeTracker::take(double t, const Workspace<double>& w) {
+  take_ranges(t, w);
   for (Limit& l : plant_.watch().limits()) {
     const double x = plant_.watch().limit_value(l, w);
     // A constant quantity has no later extreme: rounding is not worth a new time.
@@ -149,7 +187,6 @@ void ExtremeTracker::refine(const DenseStep& step, double low, double high, std:
 
 void ExtremeTracker::piece(const DenseStep& step, double from, double to) {
   std::vector<Limit>& limits = plant_.watch().limits();
-  if (limits.empty() && reliefs_.empty()) return;
   const std::size_t n = limits.size();
   std::vector<double> before(n), here(n);
   std::vector<double> times;
@@ -177,7 +214,7 @@ void ExtremeTracker::finish(double t, const double* y) {
   look(t, y);
   for (ReliefOutcome& r : reliefs_) {
     for (const LoggedEvent& e : plant_.events())
-      if (e.part == r.name && (e.what == "lifts" || e.what == "bursts")) ++r.lifts;
+      if (e.part == r.name && (e.what == "lifts" || e.what == "bursts") && r.lifts++ == 0) r.first_lift = e.time;
     const double atmosphere = plant_.layout().atmosphere_pressure;
     r.accumulation = (r.peak_pressure - r.set_pressure) / (r.set_pressure - atmosphere);
   }

@@ -3,6 +3,7 @@
 #include <string>
 #include <vector>
 
+#include "plant/ideal_departure.h"
 #include "plant/plant.h"
 #include "record/record_writer.h"
 #include "run/case.h"
@@ -42,14 +43,21 @@ public:
   void look(double t, const double* y);
   void piece(const DenseStep& step, double from, double to);
   const std::vector<ReliefOutcome>& reliefs() const { return reliefs_; }
+  const std::vector<ChannelRange>& ranges() const { return ranges_; }
+  const std::vector<IdealGasUse>& ideal_gas() const { return ideal_gas_; }
   void finish(double t, const double* y);
 
 private:
   void take(double t, const Workspace<double>& w);
+  void take_ranges(double t, const Workspace<double>& w);
   void take_relief(double t, const double* y, const Workspace<double>& w);
   void refine(const DenseStep& step, double low, double high, std::size_t limit);
   Plant& plant_;
   std::vector<ReliefOutcome> reliefs_;
+  std::vector<ChannelRange> ranges_;
+  std::vector<int> ranged_channels_;
+  std::vector<IdealGasUse> ideal_gas_;
+  std::vector<IdealDeparture> departure_;
   std::vector<double> y_;
 };
 
