@@ -77,6 +77,8 @@ void Controller::connect(Layout& layout) {
   setpoint_ = layout.add_input(name + ".setpoint", held.kind, at, 0.0, place);
   setpoint_spec_ = at;
   layout.inputs[driven_].driver = static_cast<int>(layout.channels.size());
+  // The plant is evaluated once before any part's start: an on/off controller has no integral to look at then.
+  mode_ = on_off_ ? Mode::on : Mode::free;
   if (!on_off_)
     integral_ =
         layout.add_state(name + ".integral", (held.kind.flavour == UnitFlavour::pressure ? 1e4 : 10.0) * reset_time_);
